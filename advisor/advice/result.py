@@ -1,0 +1,197 @@
+"""What an advice says: setpoints with limits, reasons and uncertainty, or the clash of two limits.
+
+Plain frozen results. Times are aware datetimes in UTC, temperatures in C, differences in K.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+from datetime import datetime
+from typing import Literal
+
+Authority = Literal["safety", "supplier", "contract", "national", "house", "computed"]
+Side = Literal["low", "high"]
+Point = Literal["binder_tank", "hot_aggregate", "discharge", "silo", "load_out", "delivery"]
+HowKnown = Literal["looked up", "derived", "common practice", "from memory", "entered", "measured"]
+
+# Highest authority first: where limits clash, the one of lower authority is the one to question.
+AUTHORITIES: tuple[Authority, ...] = (
+    "safety",
+    "supplier",
+    "contract",
+    "national",
+    "house",
+    "computed",
+)
+
+
+@dataclass(frozen=True)
+class Limit:
+    """One bound on one point of the heat path, and who set it.
+
+    ``value_c`` is the bound as it applies at ``point``; ``as_written`` is how its owner wrote it,
+    in the owner's unit; ``sd_k`` is the standard deviation of a computed bound, else 0.
+    """
+
+    point: Point
+    side: Side
+    value_c: float
+    name: str
+    authority: Authority
+    source: str
+    how_known: HowKnown
+    as_written: str = ""
+    sd_k: float = 0.0
+
+
+@dataclass(frozen=True)
+class Setpoint:
+    """Low, target and high at one point; ``sd_k`` is the uncertainty of the low bound."""
+
+    point: Point
+    label: str
+    low_c: float
+    target_c: float
+    high_c: float
+    low_set_by: Limit
+    high_set_by: Limit
+    sd_k: float = 0.0
+
+
+@dataclass(frozen=True)
+class Remedy:
+    """One way out of a clash, with what it gains; negative where it is not enough alone."""
+
+    action: str
+    gain_k: float
+    enough: bool
+    caution: str = ""
+
+
+@dataclass(frozen=True)
+class Clash:
+    """Two limits that no discharge temperature satisfies together."""
+
+    lower: Limit
+    upper: Limit
+    gap_k: float
+    remedies: tuple[Remedy, ...] = ()
+
+
+@dataclass(frozen=True)
+class InputUsed:
+    """One input of the advice and where it came from.
+
+    ``age_s`` is how old it was; ``assumed`` marks a default nobody entered, which is listed.
+    """
+
+    name: str
+    shown: str
+    origin: str
+    age_s: float | None = None
+    assumed: bool = False
+    note: str = ""
+
+
+@dataclass(frozen=True)
+class Reason:
+    """One sentence on why a number is what it is, most important first."""
+
+    code: str
+    sentence: str
+
+
+@dataclass(frozen=True)
+class Caution:
+    """A caution shown beside the advice it belongs to."""
+
+    code: str
+    text: str
+
+
+@dataclass(frozen=True)
+class PathPoint:
+    """One station on the heat path: minutes after discharge and the window there."""
+
+    name: str
+    minutes: float
+    low_c: float
+    target_c: float
+    high_c: float
+
+
+@dataclass(frozen=True)
+class Rolling:
+    """Minutes from laying to the end of rolling at the advised target: 5 %, 50 % and 95 %."""
+
+    low_min: float
+    middle_min: float
+    high_min: float
+    wanted_min: float
+    end_c: float
+    criterion: str
+
+
+@dataclass(frozen=True)
+class Contribution:
+    """Degrees of uncertainty one input adds to the discharge temperature needed."""
+
+    name: str
+    sd_k: float
+
+
+@dataclass(frozen=True)
+class Heat:
+    """Expected heat and fuel at the advised discharge temperature, per tonne of mix."""
+
+    gross_kwh_t: float
+    net_kwh_t: float
+    co2_kg_t: float
+    stack_dew_point_c: float
+    hot_aggregate_c: float | None
+    moisture_of_dry_mass: float
+    money_t: float | None = None
+    currency: str = ""
+
+
+@dataclass(frozen=True)
+class Advice:
+    """Setpoints for one mix, tank and job at one time, or why there are none.
+
+    ``setpoints`` is empty where ``clash`` or ``missing`` says why. ``passed_over`` are computed
+    preferences that a firm limit pushed aside, each with a sentence.
+    """
+
+    plant: str
+    mix: str
+    mix_name: str
+    tank: str
+    job: str
+    job_name: str
+    at: datetime
+    valid_until: datetime
+    valid_because: str
+    setpoints: tuple[Setpoint, ...]
+    limits: tuple[Limit, ...]
+    reasons: tuple[Reason, ...]
+    inputs: tuple[InputUsed, ...]
+    cautions: tuple[Caution, ...]
+    clash: Clash | None = None
+    missing: tuple[str, ...] = ()
+    passed_over: tuple[str, ...] = ()
+    path: tuple[PathPoint, ...] = ()
+    rolling: Rolling | None = None
+    heat: Heat | None = None
+    contributions: tuple[Contribution, ...] = ()
+    confidence: float = 0.95
+    felt_truck_min: float | None = None
+    felt_paver_min: float | None = None
+    wait_left_min: float | None = None
+    arrival_c: float | None = None
+    arrival_sd_k: float | None = None
+    provisional: bool = False
+    version: str = field(default="")
+
+    def setpoint(self, point: Point) -> Setpoint | None:
+        """The setpoint at ``point``, or None where the plant has no such point."""
+        return next((one for one in self.setpoints if one.point == point), None)
