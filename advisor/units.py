@@ -167,7 +167,12 @@ _KINDS: dict[str, dict[str, Unit]] = {
         "MMBtu": Unit(_BTU_J * 1e6),
         "therm": Unit(_BTU_J * 1e5),
     },
-    "power": {"W": Unit(1.0), "kW": Unit(1e3), "MW": Unit(1e6), "MMBtu/h": Unit(_BTU_J * 1e6 / 3600)},
+    "power": {
+        "W": Unit(1.0),
+        "kW": Unit(1e3),
+        "MW": Unit(1e6),
+        "MMBtu/h": Unit(_BTU_J * 1e6 / 3600),
+    },
     "heat_per_mass": {
         "J/kg": Unit(1.0),
         "MJ/kg": Unit(1e6),
