@@ -1,0 +1,5 @@
+"""`python -m advisor` is the command `advisor`."""
+
+from advisor.cli.main import main
+
+main()
