@@ -199,7 +199,8 @@ _KINDS: dict[str, dict[str, Unit]] = {
 }
 
 _WRITTEN = re.compile(
-    r"^\s*(?P<number>[+-]?(?:\d[\d_ ]*\.?\d*|\.\d+)(?:[eE][+-]?\d+)?)\s*(?P<unit>.*?)\s*$"
+    r"^\s*(?P<number>[+-]?(?:(?:\d{1,3}(?:[ _]\d{3})+(?!\d)|\d+)(?:\.\d*)?|\.\d+)(?:[eE][+-]?\d+)?)"
+    r"\s*(?P<unit>(?!,).*?)\s*$"
 )
 
 
