@@ -1,0 +1,85 @@
+"""Likely cause of an excursion, with the evidence for it."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+import pandas as pd
+
+from advisor.review.result import State
+
+
+@dataclass(frozen=True)
+class CauseRules:
+    """How far back to look and what counts as a change; values come from config/review.yaml."""
+
+    look_back_s: float
+    rate_change: float
+    heat_change: float
+    window_change_k: float
+
+
+@dataclass(frozen=True)
+class Cause:
+    """A likely cause and the sentence that supports it."""
+
+    name: str
+    evidence: str
+
+
+def likely_cause(
+    rows: pd.DataFrame, start: int, end: int, side: str, state: State, rules: CauseRules
+) -> Cause:
+    """The cause that best fits what changed at the start of rows ``start:end``.
+
+    ``rows`` has time_s [s], discharge_c and window_c (the bound crossed) [C], rate_kgs [kg/s],
+    burner_load [1] and marked (readings near it that cannot be trusted).
+    """
+    if state == "start-up":
+        return Cause("start-up", "The plant had just started; the discharge had not settled.")
+    if state == "mix change":
+        return Cause("mix change", "The mix had just changed; the discharge had not settled.")
+    time_s = rows["time_s"].to_numpy()
+    since = time_s[start]
+    back = (time_s >= since - rules.look_back_s) & (time_s < since)
+    during = np.zeros(len(rows), bool)
+    during[start:end] = True
+    if not back.any():
+        return Cause("not known", "The log does not reach back far enough to say.")
+    before, now = _means(rows[back]), _means(rows[during])
+    window_shift = now["window_c"] - before["window_c"]
+    toward = -1.0 if side == "hot" else 1.0
+    if toward * window_shift > rules.window_change_k:
+        return Cause(
+            "setpoint not changed",
+            f"The window moved by {window_shift:+.0f} K and the discharge did not follow.",
+        )
+    rate_shift = _relative(now["rate_kgs"], before["rate_kgs"])
+    if abs(rate_shift) > rules.rate_change:
+        return Cause("rate change", f"The mix rate changed by {rate_shift:+.0%} just before.")
+    heat_shift = _relative(
+        now["burner_load"] / now["rate_kgs"], before["burner_load"] / before["rate_kgs"]
+    )
+    if abs(heat_shift) > rules.heat_change and (heat_shift > 0) == (side == "hot"):
+        return Cause(
+            "burner", f"The burner gave {heat_shift:+.0%} heat per tonne against the time before."
+        )
+    if side == "hot" and abs(heat_shift) <= rules.heat_change:
+        return Cause(
+            "moisture fell",
+            f"Rate and burner stayed ({heat_shift:+.0%} heat per tonne) while the mix got hotter, "
+            "as drier stone would do.",
+        )
+    return Cause("not known", "Rate, burner and window did not change enough to explain it.")
+
+
+def _means(rows: pd.DataFrame) -> dict[str, float]:
+    return {
+        name: float(rows[name].mean())
+        for name in ("window_c", "rate_kgs", "burner_load", "discharge_c")
+    }
+
+
+def _relative(now: float, before: float) -> float:
+    return now / before - 1.0 if before and np.isfinite(before) and np.isfinite(now) else 0.0
