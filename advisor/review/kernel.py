@@ -21,6 +21,7 @@ from advisor.review.result import (
     HourCell,
     MixShare,
     SetAside,
+    State,
     StateShare,
     Waste,
 )
@@ -31,7 +32,7 @@ from advisor.review.waste import HeatPrice, excess_tk, waste_of
 Floats = NDArray[np.float64]
 
 # States in which mix is made to be sold or settled; only these can be hot or cold.
-_MAKING = ("production", "start-up", "mix change")
+_MAKING: tuple[State, ...] = ("production", "start-up", "mix change")
 _SETTLING = ("start-up", "mix change")
 
 
@@ -244,7 +245,11 @@ def review_rows(
 def _state_shares(rows: pd.DataFrame) -> tuple[StateShare, ...]:
     sums = rows.groupby("state")[["lasting_s", "mass_kg"]].sum()
     return tuple(
-        StateShare(state, sums.at[state, "lasting_s"] / 60.0, sums.at[state, "mass_kg"] / 1000.0)
+        StateShare(
+            state,
+            float(sums.loc[state, "lasting_s"]) / 60.0,
+            float(sums.loc[state, "mass_kg"]) / 1000.0,
+        )
         for state in STATES
         if state in sums.index
     )
