@@ -46,7 +46,7 @@ class ViscosityCurve:
     @property
     def size(self) -> int:
         """Number of parameters of the law: how many normal scores one draw takes."""
-        return self.parameters.shape[-1]
+        return int(self.parameters.shape[-1])
 
     def _columns(self) -> tuple[Floats, ...]:
         return tuple(np.moveaxis(self.parameters, -1, 0))

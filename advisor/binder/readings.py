@@ -9,7 +9,7 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
-from advisor.errors import FaultyInput
+from advisor.errors import FaultyInput, MissingInput
 
 Floats = NDArray[np.float64]
 Method = Literal[
@@ -27,6 +27,9 @@ Laboratories = Literal["one", "several"]
 # Points below this temperature bend away from the mixing line: the real binder is stiffer than
 # the line drawn from 60 and 135 C (ASTM D2493 section 5, looked up, asks for three points there).
 LINE_FROM_C = 59.5
+# Correlation of the doubts of the penetration and softening point conversions; derived from the
+# eight SHRP core binders named in ``consistency`` (their figures from memory).
+CONVERTED_CORRELATION = 0.58
 
 
 @dataclass(frozen=True)
@@ -42,11 +45,12 @@ SAMPLE = Sample()
 
 @dataclass(frozen=True)
 class Precision:
-    """Standard deviations of one test: one operator, and between laboratories.
+    """Standard deviations of one test for results between ``low`` and ``high``.
 
-    Shares of the value [1] where ``relative``, else in the unit of the test (dmm, C). The
-    precision of a standard is usually printed as the difference two results should not exceed;
-    ``difference_two_results`` turns one into the other.
+    ``one_laboratory`` is repetition by one operator, ``several_laboratories`` the spread between
+    laboratories: shares of the value [1] where ``relative``, else in the unit of the test (dmm,
+    C). Standards usually print the difference two results should not exceed;
+    ``difference_two_results`` turns a deviation into that.
     """
 
     method: str
@@ -55,10 +59,39 @@ class Precision:
     relative: bool
     source: str
     how_known: str
+    low: float = 0.0
+    high: float = float("inf")
 
-    def sd(self, laboratories: Laboratories) -> float:
-        """Standard deviation [1, or the unit of the test] for the use named."""
-        return self.one_laboratory if laboratories == "one" else self.several_laboratories
+    def sd(self, value: float, laboratories: Laboratories) -> float:
+        """Standard deviation in the unit of ``value``, for the use named."""
+        share = self.one_laboratory if laboratories == "one" else self.several_laboratories
+        return share * value if self.relative else share
+
+
+@dataclass(frozen=True)
+class PrecisionTable:
+    """Precision of every test, to be asked by test and result."""
+
+    rows: tuple[Precision, ...]
+
+    def find(self, method: str, value: float = 1.0) -> Precision:
+        """Row for a test and a result; between two rows, the less precise of the test.
+
+        Raises:
+            MissingInput: no row names the test.
+        """
+        named = [row for row in self.rows if row.method == method]
+        if not named:
+            known = ", ".join(sorted({row.method for row in self.rows}))
+            raise MissingInput.of(
+                "precision-missing",
+                f"No precision is known for '{method}'.",
+                f"Known tests: {known}.",
+                field="method",
+                value=method,
+            )
+        inside = [row for row in named if row.low <= value <= row.high]
+        return max(inside or named, key=lambda row: row.sd(value, "several"))
 
 
 @dataclass(frozen=True)
@@ -194,7 +227,8 @@ def error_correlation(readings: Sequence[Reading]) -> Floats:
     """Correlation [1] of the errors of readings, shape (n, n).
 
     Readings of one method by one laboratory share its bias: the part of the variance between
-    laboratories that repetition within one does not explain.
+    laboratories that repetition within one does not explain. Penetration and softening point
+    share part of the bend that their conversion leaves out.
 
     Args:
         readings: the readings, n of them.
@@ -205,7 +239,10 @@ def error_correlation(readings: Sequence[Reading]) -> Floats:
     found = np.eye(count)
     for i, one in enumerate(readings):
         for j, other in enumerate(readings[:i]):
-            if one.method == other.method and one.sample.laboratory == other.sample.laboratory:
+            if {one.method, other.method} == {"penetration", "softening point"}:
+                shared = CONVERTED_CORRELATION * one.model_sd * other.model_sd
+                found[i, j] = found[j, i] = shared / (one.relative_sd * other.relative_sd)
+            elif one.method == other.method and one.sample.laboratory == other.sample.laboratory:
                 shared = np.sqrt(_bias_variance(one) * _bias_variance(other))
                 found[i, j] = found[j, i] = shared / (one.relative_sd * other.relative_sd)
     return found

@@ -113,21 +113,22 @@ def window_for(
 
     Source: as the target names; the kinematic form is Asphalt Institute MS-2, 1974 (looked up).
     """
-    words = (target.purpose, target.name, target.source, target.how_known)
-    if target.basis != "kinematic":
-        return _dynamic(curve, target.low, target.target, target.high, *words)
-    if density_15c_kgm3 is None:
+    values = (target.low, target.target, target.high)
+    if target.basis == "kinematic" and density_15c_kgm3 is None:
         raise FaultyInput.of(
             "density-missing",
             f"The target '{target.name}' is kinematic and needs the density of the binder.",
             "Enter the density at 15 C, or choose a dynamic target.",
             field="density",
         )
-    viscosities = [
-        _dynamic_of_kinematic(curve, value, density_15c_kgm3, column)
-        for value in (target.low, target.target, target.high)
-    ]
-    return _dynamic(curve, *viscosities, *words)
+    thin, middle, thick = (
+        np.asarray(value, float)
+        if density_15c_kgm3 is None or target.basis != "kinematic"
+        else _dynamic_of_kinematic(curve, value, density_15c_kgm3, column)
+        for value in values
+    )
+    words = (target.purpose, target.name, target.source, target.how_known)
+    return _dynamic(curve, thin, middle, thick, *words)
 
 
 def _dynamic(
@@ -142,21 +143,24 @@ def _dynamic(
 ) -> Window:
     thick, middle, thin = (np.asarray(part, float) for part in (high_pas, target_pas, low_pas))
     low_c, target_c, high_c = (curve.temperature_c(part) for part in (thick, middle, thin))
-    sds = [
-        curve.relative_sd(temperature) / np.abs(curve.log_slope_per_k(temperature))
-        for temperature in (low_c, target_c, high_c)
-    ]
     return Window(
-        low_c,
-        target_c,
-        high_c,
-        *sds,
-        purpose,
-        method,
-        source,
-        how_known,
+        low_c=low_c,
+        target_c=target_c,
+        high_c=high_c,
+        low_sd_k=_sd_k(curve, low_c),
+        target_sd_k=_sd_k(curve, target_c),
+        high_sd_k=_sd_k(curve, high_c),
+        purpose=purpose,
+        method=method,
+        source=source,
+        how_known=how_known,
         cautions=(*curve.notes, *_extrapolation(curve, low_c, high_c)),
     )
+
+
+def _sd_k(curve: ViscosityCurve, temperature_c: Floats) -> Floats:
+    found: Floats = curve.relative_sd(temperature_c) / np.abs(curve.log_slope_per_k(temperature_c))
+    return found
 
 
 def _dynamic_of_kinematic(
