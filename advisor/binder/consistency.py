@@ -76,8 +76,8 @@ def penetration_reading(
     unusable: tuple[str, ...] = ()
     remarks = [
         (
-            f"The formula gives {plain:,.0f} Pa.s; the mixing line lies lower at 25 C, so the point "
-            f"enters at {np.exp(_PENETRATION_TO_LINE_LN):.2f} of it, with a wide bar."
+            f"The formula gives {plain:,.0f} Pa.s; the mixing line lies lower at 25 C, so the "
+            f"point enters at {np.exp(_PENETRATION_TO_LINE_LN):.2f} of it, with a wide bar."
         )
     ]
     if abs(temperature_c - 25.0) > 0.2:
@@ -130,8 +130,8 @@ def softening_point_reading(
     )
     remarks = (
         (
-            f"By convention {SOFTENING_VISCOSITY_PAS:g} Pa.s; the mixing line lies lower there, so the "
-            f"point enters at {np.exp(_SOFTENING_TO_LINE_LN):.2f} of it, with a wide bar."
+            f"By convention {SOFTENING_VISCOSITY_PAS:g} Pa.s; the mixing line lies lower there, "
+            f"so the point enters at {np.exp(_SOFTENING_TO_LINE_LN):.2f} of it, with a wide bar."
         ),
     )
     slope, model = _SOFTENING_SLOPE_PER_K, _SOFTENING_TO_LINE_SD

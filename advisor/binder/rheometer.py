@@ -188,8 +188,8 @@ def rheometer_reading(
     if phase_angle_deg < ELASTIC_BELOW_DEG:
         unusable = (
             (
-                f"The phase angle, {phase_angle_deg:g} degrees, is below {ELASTIC_BELOW_DEG:g}: the "
-                "binder is too elastic for this conversion to serve a mixing temperature."
+                f"The phase angle, {phase_angle_deg:g} degrees, is below {ELASTIC_BELOW_DEG:g}: "
+                "the binder is too elastic for this conversion to serve a mixing temperature."
             ),
         )
     written = as_written or f"{modulus_pa:g} Pa at {phase_angle_deg:g} deg"

@@ -58,8 +58,8 @@ def fit_vft(temperature_c: ArrayLike, viscosity_pas: ArrayLike, relative_sd: Arr
     """
     from scipy.optimize import least_squares
 
-    t, eta, share = (
-        np.asarray(part, float) for part in (temperature_c, viscosity_pas, relative_sd)
+    t, eta, share = np.broadcast_arrays(
+        *(np.asarray(part, float) for part in (temperature_c, viscosity_pas, relative_sd))
     )
     if t.size < 3:
         raise MissingInput.of(
