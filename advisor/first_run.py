@@ -30,7 +30,7 @@ ENVIRONMENT = ROOT / ".venv"
 PYTHON = ENVIRONMENT / ("Scripts/python.exe" if os.name == "nt" else "bin/python")
 STAMP = ENVIRONMENT / "first_run.json"
 
-NO_NETWORK = ("NewConnectionError", "ConnectTimeout", "ReadTimeout", "ProxyError", "getaddrinfo")
+NO_NETWORK = ("NewConnectionError", "NameResolutionError", "ProxyError", "timed out")
 
 
 def main(words: list[str]) -> int:
@@ -111,19 +111,19 @@ def install(*what: str) -> None:
         "PIP_DISABLE_PIP_VERSION_CHECK": "1",
         "PIP_NO_INPUT": "1",
     }
-    pip = subprocess.Popen(
+    complaints = []
+    with subprocess.Popen(
         [PYTHON, "-m", "pip", "install", *what],
         cwd=ROOT,
         env={**os.environ, **versions},
         stderr=subprocess.PIPE,
         text=True,
         errors="replace",
-    )
-    complaints = []
-    for line in pip.stderr or ():
-        sys.stderr.write(line)
-        complaints.append(line)
-    if pip.wait() == 0:
+    ) as pip:
+        for line in pip.stderr or ():
+            sys.stderr.write(line)
+            complaints.append(line)
+    if pip.returncode == 0:
         return
     if any(sign in line for sign in NO_NETWORK for line in complaints):
         sys.exit(

@@ -20,7 +20,7 @@ def fault_of(name: str) -> str:
         return "a difference ends with _delta_k"
     if name.endswith("_c") and _DIFFERENCE.search(name):
         return "a difference ends with _k"
-    if name.endswith("_temperature") or name == "temperature":
+    if name.endswith("_temperature"):
         return "a temperature ends with _c"
     return ""
 
@@ -60,11 +60,11 @@ def test_wrong_names_are_found() -> None:
         "class Load:\n"
         "    drop_c: float\n"
         "    core_c: float\n"
-        "def cooled(start_f, temperature, sd_delta_c, start_c, sd_k, *, casing_loss): ...\n"
+        "def cooled(start_f, air_temperature, sd_delta_c, start_c, sd_k, *, casing_loss): ...\n"
     )
     assert [fault.split(":")[1].strip() for fault in faults(module)] == [
         "drop_c",
         "start_f",
-        "temperature",
+        "air_temperature",
         "sd_delta_c",
     ]

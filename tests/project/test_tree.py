@@ -15,7 +15,7 @@ NOWHERE = {
     "a path of one machine": r"(?<![\w.~:/*-])/(root|home|Users|work|tmp|opt|mnt|srv)/\w",
     "a path of one Windows machine": r"\b[A-Z]:\\Users\\",
     "a package host": r"pypi\.org|pythonhosted|anaconda\.org|npmjs|(?<!fonts-)cdn\.|unpkg|"
-    r"--(extra-)?index-url|--find-links|PIP_INDEX",
+    r"--(extra-)?index-url|--find-links",
     "a source that is no publication": r"(?i)\blecture|\btranscript",
     "work left for later": r"\b(TODO|FIXME|XXX|HACK)\b",
     "a test that does not run": r"pytest\.mark\.(skip\b|xfail)|unittest\.skip",
