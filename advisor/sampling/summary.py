@@ -11,9 +11,13 @@ Floats = NDArray[np.float64]
 
 
 def quantile(draws: ArrayLike, probability: float) -> Floats:
-    """Quantile of each row of ``draws`` (..., count), in the unit of the draws; shape (...).
+    """Quantile of each row of draws, in the unit of the draws [any]; shape (...).
 
     Infinite draws are allowed and stay infinite where they reach the quantile.
+
+    Args:
+        draws: draws of one output or of many [any], shape (..., count).
+        probability: share of the draws below the quantile [1], 0 to 1.
     """
     ordered = np.sort(np.asarray(draws, float), axis=-1)
     place = probability * (ordered.shape[-1] - 1)
@@ -29,16 +33,24 @@ def quantile(draws: ArrayLike, probability: float) -> Floats:
 
 
 def share_true(draws: ArrayLike) -> Floats:
-    """Share [1] of draws that are true along the last axis."""
+    """Share [1] of draws that are true along the last axis.
+
+    Args:
+        draws: true or false for each draw [1], shape (..., count).
+    """
     share: Floats = np.mean(np.asarray(draws, bool), axis=-1)
     return share
 
 
 def contributions_sd(output: ArrayLike, inputs: Mapping[str, ArrayLike]) -> dict[str, float]:
-    """Standard deviation each input adds to ``output``, in the unit of the output, largest first.
+    """Standard deviation each input adds to an output, in its unit [any], largest first.
 
-    ``output`` has shape (count,), each input too. The output is regressed linearly on the
-    standardised inputs; what the line does not explain is called 'interaction'.
+    The output is regressed linearly on the standardised inputs; what the line does not explain
+    is called 'interaction'.
+
+    Args:
+        output: draws of the output [any], shape (count,).
+        inputs: the draws of each input by its name, each in its own unit [any], shape (count,).
     """
     found = np.asarray(output, float)
     centred = found - found.mean()
