@@ -1,7 +1,7 @@
 """Every public function of the science rooms says what it takes and what comes out.
 
 The convention: the first line says what comes out, with its unit in brackets; a section ``Args:``
-has one line ``name: meaning [unit]`` for each parameter.
+has one line ``name: meaning [unit]`` for each parameter; ``any unit`` where it does not matter.
 """
 
 from __future__ import annotations
@@ -48,7 +48,8 @@ def faults(function: Callable[..., object]) -> list[str]:
     entries = dict(zip(named, _ENTRY.split(told)[2::2], strict=True))
     for name, parameter in given.items():
         numeric = _NUMBER.search(str(parameter.annotation))
-        if numeric and "[" not in entries.get(name, "["):
+        entry = entries.get(name, "[")
+        if numeric and "[" not in entry and "any unit" not in entry:
             wrong.append(f"{name} has no unit in brackets")
     if not text.partition("\n")[0].strip().endswith((".", ":")):
         wrong.append("the first line is no sentence")
