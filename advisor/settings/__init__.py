@@ -1,7 +1,9 @@
 """Settings: the plant folder's YAML files and the tables of config/, read, checked and frozen."""
 
+from advisor.settings.cautions import caution_text
 from advisor.settings.faults import nearest, read_model
 from advisor.settings.folder import PlantFolder, read_plant
+from advisor.settings.limits import PublishedLimit, load_limits, published_limits
 from advisor.settings.mixes import Job, Mix
 from advisor.settings.moments import local_text, utc_of
 from advisor.settings.plant import OwnLimit, Plant, Silo, Tank
@@ -17,16 +19,20 @@ __all__ = [
     "OwnLimit",
     "Plant",
     "PlantFolder",
+    "PublishedLimit",
     "Row",
     "Signals",
     "Silo",
     "Table",
     "Tank",
     "YamlSource",
+    "caution_text",
+    "load_limits",
     "load_table",
     "local_text",
     "names_in",
     "nearest",
+    "published_limits",
     "read_model",
     "read_plant",
     "read_yaml",

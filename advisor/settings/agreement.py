@@ -6,6 +6,7 @@ from collections.abc import Iterable, Iterator, Mapping
 
 from advisor.errors import AdvisorError, Fault, FaultyInput
 from advisor.settings.faults import fault_at, nearest
+from advisor.settings.limits import limit_schemes
 from advisor.settings.mixes import Job, JobsFile, Mix, MixesFile
 from advisor.settings.moments import utc_of
 from advisor.settings.plant import OwnLimit, Plant, Tank, TanksFile
@@ -41,6 +42,15 @@ def _of_plant(plant: Plant, source: YamlSource) -> Iterator[Fault]:
     yield from _twice([silo.name for silo in plant.silos], source, ("silos",), "name")
     yield from _crossed(plant.house_limits, source, ("house_limits",))
     yield from _unknown(plant.dryer.fuel.name, "fuels", source, ("dryer", "fuel", "name"))
+    for at, scheme in enumerate(plant.published_limits):
+        if scheme not in limit_schemes():
+            yield fault_at(
+                source,
+                ("published_limits", at),
+                "unknown-name",
+                f"'{scheme}' is no scheme of config/limits.csv.",
+                nearest(scheme, limit_schemes()),
+            )
     for signal, sensor in plant.sensors.items():
         if sensor.kind is not None:
             yield from _unknown(sensor.kind, "sensors", source, ("sensors", signal, "kind"))
