@@ -1,0 +1,30 @@
+"""Plant exports and weather: read, checked, marked and kept; never changed and never written back.
+
+``read_logs`` is the door: a plant folder and a period in, frames and intake reports out.
+"""
+
+from __future__ import annotations
+
+import importlib
+from typing import Any
+
+_HOME = {
+    "Intake": "intake",
+    "IntakeReport": "report",
+    "PlantLog": "plant_log",
+    "SetAsideRow": "report",
+    "read_export": "intake",
+    "read_kind": "plant_log",
+    "read_logs": "plant_log",
+    "write_report": "report",
+    "write_set_aside": "report",
+}
+
+__all__ = sorted(_HOME)
+
+
+def __getattr__(name: str) -> Any:
+    """The public name ``name``, imported on first use: pandas and pyarrow are slow to load."""
+    if name not in _HOME:
+        raise AttributeError(f"module {__name__!r} has no attribute {name!r}")
+    return getattr(importlib.import_module(f"{__name__}.{_HOME[name]}"), name)
