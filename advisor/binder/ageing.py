@@ -27,10 +27,12 @@ HARDENING_CODES: dict[Resistance, int] = {
 # Activation energy of oxidation, J/mol: 64 to 109 in 14 asphalts (Liu et al. 1996, AIChE J. 42(4),
 # looked up; measured near 60 to 100 C). The middle value is common practice, no source.
 OXIDATION_LOW_J_MOL, OXIDATION_MIDDLE_J_MOL, OXIDATION_HIGH_J_MOL = 64e3, 85e3, 109e3
-# A hot mix film hardens by this factor at 135 C on its way through plant and laying at about
-# 163 C: derived from the hardening codes above, -1 to 2, at 0.4 Pa.s.
-_MIXING_REFERENCE_C = 163.0
-_MIXING_FACTOR_LOW, _MIXING_FACTOR_MIDDLE, _MIXING_FACTOR_HIGH = 1.6, 1.85, 2.4
+# A hot mix film hardens by about this factor at 135 C on its way through plant and laying when
+# mixed at 163 C: derived from the hardening codes (1.6 to 2.4 at 0.4 Pa.s).
+_MIXING_REFERENCE_C, _MIXING_FACTOR = 163.0, 1.85
+# The softening point rises 1 K for every 5.5 K of mixing temperature (handbook rule, from memory);
+# 1 K along the curve is 5.6 % of viscosity at 135 C (derived from a PG 64-22 line).
+_SOFTENING_PER_K, _LN_VISCOSITY_PER_K = 1.0 / 5.5, 0.056
 # Storage: days in which a still tank of 0.15 m2 surface per tonne at 150 C hardens by less than
 # what a test can see. 'Virtually no change in 4 weeks' of 3 to 4 kt (looked up).
 _STILL_DAYS, _STILL_SURFACE_M2_T, _STILL_C = 28.0, 0.15, 150.0
@@ -86,7 +88,7 @@ def aged_curve(curve: ViscosityCurve, code: float = 0.0, code_sd: float = 0.0) -
 def original_constants(
     intercept: ArrayLike, slope: ArrayLike, code: ArrayLike = 0
 ) -> tuple[Floats, Floats]:
-    """A and VTS [1] of the tank binder from those after mixing, the way tables of defaults give them.
+    """A and VTS [1] of the tank binder from those after mixing, as tables of defaults give them.
 
     Args:
         intercept: A after mixing [1].
@@ -207,28 +209,27 @@ class Hardening:
 def mixing_hardening(mixing_c: float, hotter_k: float) -> Hardening:
     """How much more the binder hardens when mixed hotter, as a factor on its viscosity at 135 C.
 
-    The hardening of mixing and laying is taken to be oxidation, so that its logarithm grows with
-    the rate; the range comes from the activation energy and the hardening code together.
+    The least effect believed is a handbook rule on the softening point; the greatest takes all
+    hardening for oxidation with the highest activation energy. The middle lies between the rule
+    and oxidation with the middle energy.
 
     Args:
         mixing_c: temperature the mix is made at now [C].
         hotter_k: how much hotter [K]; negative for cooler.
 
     Source: activation energies of Liu et al. 1996 (looked up, near 60 to 100 C); hardening codes
-    of Mirza and Witczak (from memory). A plant study in Virginia, 1972, saw no effect in the oven
-    up to 149 C (looked up): plant results conflict.
+    of Mirza and Witczak and the softening point rule (from memory). A plant study in Virginia,
+    1972, saw no effect in the oven up to 149 C (looked up): plant results conflict.
     """
-    factors = []
-    for total, energy in (
-        (_MIXING_FACTOR_LOW, OXIDATION_LOW_J_MOL),
-        (_MIXING_FACTOR_MIDDLE, OXIDATION_MIDDLE_J_MOL),
-        (_MIXING_FACTOR_HIGH, OXIDATION_HIGH_J_MOL),
-    ):
-        usual = np.log(total) * oxidation_ratio(_MIXING_REFERENCE_C, mixing_c, energy)
-        factors.append(
-            float(np.exp(usual * (oxidation_ratio(mixing_c, mixing_c + hotter_k, energy) - 1.0)))
-        )
-    low, middle, high = sorted(factors)
+
+    def by_oxidation(energy: float) -> float:
+        usual = np.log(_MIXING_FACTOR) * oxidation_ratio(_MIXING_REFERENCE_C, mixing_c, energy)
+        return float(usual * (oxidation_ratio(mixing_c, mixing_c + hotter_k, energy) - 1.0))
+
+    by_rule = _LN_VISCOSITY_PER_K * _SOFTENING_PER_K * hotter_k
+    middle = 0.5 * (by_rule + by_oxidation(OXIDATION_MIDDLE_J_MOL))
+    most = by_oxidation(OXIDATION_HIGH_J_MOL)
+    low, middle, high = sorted(float(np.exp(part)) for part in (by_rule, middle, most))
     word = "hotter" if hotter_k >= 0.0 else "cooler"
     return Hardening(
         low,
