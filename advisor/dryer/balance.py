@@ -15,7 +15,7 @@ from numpy.typing import ArrayLike
 
 from advisor.dryer.fuel import Combustion, combustion
 from advisor.dryer.materials import binder_enthalpy_j_kg
-from advisor.dryer.operation import STEAM_TO_STACK, Operation, refuse_impossible
+from advisor.dryer.operation import STEAM_TO_STACK, Fraction, Operation, Rap, refuse_impossible
 from advisor.dryer.properties import (
     AIR_MOLES,
     GAS_CONSTANT_J_MOLK,
@@ -120,7 +120,7 @@ def heat_balance(
     without iteration. The fuel enters at 25 C. Heating values at 25 C, losses against net heat.
     """
     refuse_impossible(operation)
-    feed, burnt = operation.feed, combustion(operation.fuel)
+    burnt = combustion(operation.fuel)
     mix_c = np.asarray(operation.discharge_c, float)
     stack_c = np.asarray(operation.stack_c, float)
 
@@ -214,8 +214,8 @@ def _heat_to_water(
 ) -> tuple[Values, Values, Values, Values, Values]:
     """Evaporation, superheat and residual water [J/kg]; all steam and that of the stack [kg/kg]."""
     feed = operation.feed
-    wet = [(one, True) for one in feed.fractions]
-    streams = [*wet, *((one, STEAM_TO_STACK[one.point]) for one in feed.rap)]
+    streams: list[tuple[Fraction | Rap, bool]] = [(one, True) for one in feed.fractions]
+    streams += [(one, STEAM_TO_STACK[one.point]) for one in feed.rap]
     entering = feed.water_kg_kg
     residual_kg = np.asarray(feed.residual_of_mix, float)
     # what stays in the mix is taken from every stream in proportion

@@ -83,7 +83,7 @@ class Feed:
     @property
     def water_kg_kg(self) -> Values:
         """Water that enters [kg/kg mix]."""
-        wet = (*self.fractions, *self.rap)
+        wet: tuple[Fraction | Rap, ...] = (*self.fractions, *self.rap)
         return np.asarray(sum(_array(s.of_mix) * _array(s.moisture_of_dry_mass) for s in wet))
 
     @property
@@ -176,10 +176,10 @@ def refuse_impossible(operation: Operation) -> None:
                 "out-of-range", f"{value} is not between {low:g} and {high:g}.", remedy,
                 field=place, value=value))  # fmt: skip
 
-    for place, part in (
-        *((f"fractions[{i}]", one) for i, one in enumerate(feed.fractions)),
-        *((f"rap[{i}]", one) for i, one in enumerate(feed.rap)),
-    ):
+    parts: list[tuple[str, Fraction | Rap]] = []
+    parts += [(f"fractions[{i}]", one) for i, one in enumerate(feed.fractions)]
+    parts += [(f"rap[{i}]", one) for i, one in enumerate(feed.rap)]
+    for place, part in parts:
         within(f"{place}.of_mix", part.of_mix, 0.0, 1.0, "Give dry mass over mass of mix.")
         within(f"{place}.moisture_of_dry_mass", part.moisture_of_dry_mass, 0.0, 0.5,
                "Give water over dry mass.")  # fmt: skip
@@ -190,9 +190,9 @@ def refuse_impossible(operation: Operation) -> None:
     for i, filler in enumerate(feed.filler):
         within(f"filler[{i}].of_mix", filler.of_mix, 0.0, 1.0, "Give mass over mass of mix.")
     within("binder_of_mix", feed.binder_of_mix, 0.0, 0.3, "Give binder over mass of mix.")
-    share = sum((_array(one.of_mix) for one in (*feed.fractions, *feed.rap, *feed.filler)),
-                _array(feed.binder_of_mix))  # fmt: skip
-    within("feed", share, 1.0 - 1e-6, 1.0 + 1e-6,
+    solid: tuple[Fraction | Rap | Filler, ...] = (*feed.fractions, *feed.rap, *feed.filler)
+    whole = sum((_array(one.of_mix) for one in solid), _array(feed.binder_of_mix))
+    within("feed", whole, 1.0 - 1e-6, 1.0 + 1e-6,
            "Fractions, RAP, filler and new binder must sum to 1 by dry mass.")  # fmt: skip
     within("residual_of_mix", feed.water_kg_kg - _array(feed.residual_of_mix), 0.0, 1.0,
            "No more water can stay in the mix than was fed.")  # fmt: skip

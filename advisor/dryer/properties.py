@@ -68,7 +68,8 @@ def curve_of(
     """The Curve through ``one`` at degree + 1 Chebyshev points between ``low`` and ``high``."""
     points = chebyshev.chebpts1(degree + 1)
     asked = [one(float(x)) for x in (points * (high - low) + high + low) / 2]
-    return Curve(name, low, high, chebyshev.chebfit(points, asked, degree))
+    fitted = np.asarray(chebyshev.chebfit(points, asked, degree), float)
+    return Curve(name, low, high, fitted)
 
 
 @lru_cache(maxsize=1)

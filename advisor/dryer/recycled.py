@@ -33,14 +33,14 @@ def hot_aggregate_needed_c(
         transfer_drop_k: drop of the aggregate between dryer and mixer [K]
 
     Raises:
-        FaultyInput: no virgin aggregate, or RAP that is fed into the drum, where the gas heats it too
+        FaultyInput: no virgin aggregate, or RAP fed into the drum, where the gas heats it too
 
     Source: first law at the mixer, ``sum of share c (T_agg - T_mix) = heat taken up``.
     """
     _refuse_drum_fed(feed)
     mix_c = np.asarray(discharge_c, float)
     needed = _heat_taken_j_kg(mix_c, feed)
-    return _solved_c(mix_c, needed, feed) + np.asarray(transfer_drop_k, float)
+    return np.asarray(_solved_c(mix_c, needed, feed) + np.asarray(transfer_drop_k, float))
 
 
 def most_rap_of_mix(
