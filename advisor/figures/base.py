@@ -17,8 +17,8 @@ TEXT_PX = 14
 NOTE_PX = 12
 
 
-def bare(ink: Ink, height: int | None, margin: tuple[int, int, int, int]) -> go.Figure:
-    """An empty figure of ``height`` [px] with margins left, right, top, bottom [px]."""
+def bare(ink: Ink, margin: tuple[int, int, int, int]) -> go.Figure:
+    """An empty figure that fills its place, with margins left, right, top, bottom [px]."""
     left, right, top, bottom = margin
     axis: dict[str, Any] = {
         "showgrid": False,
@@ -34,7 +34,6 @@ def bare(ink: Ink, height: int | None, margin: tuple[int, int, int, int]) -> go.
     return go.Figure(
         layout={
             "template": None,
-            "height": height,
             "autosize": True,
             "margin": {"l": left, "r": right, "t": top, "b": bottom, "pad": 0},
             "paper_bgcolor": "rgba(0,0,0,0)",
@@ -89,6 +88,20 @@ def temperature_axis(
     figure.update_yaxes(
         range=[low, high], tickvals=ticks, ticktext=words, showgrid=True, gridcolor=ink.rule
     )
+
+
+def note(figure: go.Figure, words: str, ink: Ink) -> go.Figure:
+    """The figure with a sentence in the middle in place of a drawing."""
+    figure.update_xaxes(visible=False, range=[0, 1])
+    figure.update_yaxes(visible=False, range=[0, 1])
+    figure.add_annotation(
+        x=0.5,
+        y=0.5,
+        text=words,
+        showarrow=False,
+        font={"size": TEXT_PX, "color": ink.quiet},
+    )
+    return figure
 
 
 def blank() -> go.Figure:

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
 
 import plotly.graph_objects as go
 
@@ -13,12 +12,14 @@ from advisor.figures.base import (
     TEXT_PX,
     bare,
     degrees,
+    note,
     temperature,
     temperature_axis,
     whole_delta,
 )
 from advisor.figures.drawn import Reading, verdict_of
 from advisor.figures.ink import LIGHT, Ink
+from advisor.figures.labels import Anchor, Room
 from advisor.units import UnitSystem, shown_unit
 
 # The station of the path at which a point of the advice is met.
@@ -28,10 +29,11 @@ STATIONS: dict[Point, str] = {
     "load_out": "load-out",
     "delivery": "paver",
 }
-# Stations closer than this share of the whole path share one label.
-_NEAR = 0.075
 # A limit further than this from the window and the readings is named by the setpoint, not drawn.
 _REACH_K = 25.0
+_MARGIN = (62, 16, 24, 26)
+# The size the words are laid out for; a narrow figure drops them instead.
+_WIDTH, _HEIGHT, _NARROW = 890, 240, 330
 
 
 def heat_path(
@@ -39,7 +41,7 @@ def heat_path(
     readings: Sequence[Reading] = (),
     units: UnitSystem = "si",
     ink: Ink = LIGHT,
-    height: int | None = None,
+    narrow: bool = False,
 ) -> go.Figure:
     """Figure of temperature against minutes after discharge: window, target, limits, readings.
 
@@ -49,22 +51,25 @@ def heat_path(
     readings : the latest reading at each point, drawn with bars of two standard deviations
     units : 'si' or 'us'
     ink : palette
-    height : px, or None to fill the space given
+    narrow : whether the figure is for a phone: fewer words
     """
-    figure = bare(ink, height, (62, 14, 26, 44))
-    if len(advice.path) < 2:
-        return _empty(figure, ink)
+    figure = bare(ink, _MARGIN)
     path = advice.path
-    minutes = [one.minutes for one in path]
-    end = max(minutes[-1], 1.0)
-    _ribbon(figure, path, units, ink)
-    _stations(figure, path, end, ink)
+    if len(path) < 2:
+        return note(figure, "No window to draw.", ink)
     limits = _limits_drawn(advice, readings)
-    for spot, reading in enumerate(readings):
-        _reading(figure, path, reading, end, units, ink, spot)
-    _axes(figure, advice, readings, limits, end, units, ink)
+    room = _room(path, readings, limits, units, narrow)
+    _axes(figure, path, room, units, ink, narrow)
+    _ribbon(figure, path, units, ink)
+    _stations(figure, path, room, ink, narrow)
+    found = [(one, place) for one in readings if (place := _place(path, one.point))]
+    for reading, place in found:
+        if reading.value_c is not None:
+            room.keep_clear(place.minutes, temperature(reading.value_c, units), 10)
+    for reading, place in found:
+        _reading(figure, place, reading, room, units, ink, narrow)
     for limit in limits:
-        _limit(figure, path, limit, end, units, ink)
+        _limit(figure, path, limit, room, units, ink, narrow)
     return figure
 
 
@@ -72,7 +77,6 @@ def heat_path_words(advice: Advice, readings: Sequence[Reading], units: UnitSyst
     """One sentence for those who cannot see the figure."""
     if len(advice.path) < 2:
         return "No heat path: there is no window to draw."
-    unit = shown_unit("temperature", units)
     stations = "; ".join(
         f"{one.name} {degrees(one.low_c, units)} to {degrees(one.high_c, units)}, "
         f"target {degrees(one.target_c, units)}"
@@ -83,12 +87,81 @@ def heat_path_words(advice: Advice, readings: Sequence[Reading], units: UnitSyst
         for one in readings
         if one.point in STATIONS and one.value_c is not None
     )
-    return f"Window in {unit}: {stations}." + (f" Latest readings: {now}." if now else "")
+    words = f"Window in {shown_unit('temperature', units)}: {stations}."
+    return f"{words} Latest readings: {now}." if now else words
 
 
-def _ribbon(
-    figure: go.Figure, path: Sequence[PathPoint], units: UnitSystem, ink: Ink
+def _place(path: Sequence[PathPoint], point: Point) -> PathPoint | None:
+    name = STATIONS.get(point)
+    return next((one for one in path if one.name == name), None)
+
+
+def _limits_drawn(advice: Advice, readings: Sequence[Reading]) -> list[Limit]:
+    """The tightest firm limit of each point and side that lies within reach of the window."""
+    low, high = _span(advice.path, readings)
+    tightest: dict[tuple[str, str], Limit] = {}
+    for limit in advice.limits:
+        if limit.authority == "computed" or _place(advice.path, limit.point) is None:
+            continue
+        if not low - _REACH_K <= limit.value_c <= high + _REACH_K:
+            continue
+        held = tightest.get((limit.point, limit.side))
+        sign = 1 if limit.side == "low" else -1
+        if held is None or sign * limit.value_c > sign * held.value_c:
+            tightest[(limit.point, limit.side)] = limit
+    return list(tightest.values())
+
+
+def _span(path: Sequence[PathPoint], readings: Sequence[Reading]) -> tuple[float, float]:
+    values = [one.low_c for one in path] + [one.high_c for one in path]
+    for reading in readings:
+        if reading.value_c is not None and _place(path, reading.point):
+            values += [reading.value_c - 2 * reading.sd_k, reading.value_c + 2 * reading.sd_k]
+    return min(values), max(values)
+
+
+def _room(
+    path: Sequence[PathPoint],
+    readings: Sequence[Reading],
+    limits: Sequence[Limit],
+    units: UnitSystem,
+    narrow: bool,
+) -> Room:
+    low, high = _span(path, readings)
+    low = min([low, *(one.value_c for one in limits)])
+    high = max([high, *(one.value_c for one in limits)])
+    spare = max(3.0, 0.13 * (high - low))
+    end = max(path[-1].minutes, 1.0)
+    left, right, top, bottom = _MARGIN
+    return Room(
+        width=(_NARROW if narrow else _WIDTH) - left - right,
+        height=_HEIGHT - top - bottom,
+        x_range=(-0.015 * end, 1.015 * end),
+        y_range=(temperature(low - spare, units), temperature(high + spare, units)),
+    )
+
+
+def _axes(
+    figure: go.Figure,
+    path: Sequence[PathPoint],
+    room: Room,
+    units: UnitSystem,
+    ink: Ink,
+    narrow: bool,
 ) -> None:
+    temperature_axis(figure, *room.y_range, units, ink)
+    end = max(path[-1].minutes, 1.0)
+    most = 5 if narrow else 9
+    step = next((one for one in (5, 10, 20, 30, 60, 120, 240) if end / one <= most), 480)
+    ticks = list(range(0, int(end) + 1, step))
+    figure.update_xaxes(
+        range=room.x_range,
+        tickvals=ticks,
+        ticktext=[f"{tick} min" if tick == ticks[-1] else str(tick) for tick in ticks],
+    )
+
+
+def _ribbon(figure: go.Figure, path: Sequence[PathPoint], units: UnitSystem, ink: Ink) -> None:
     minutes = [one.minutes for one in path]
     low = [temperature(one.low_c, units) for one in path]
     high = [temperature(one.high_c, units) for one in path]
@@ -117,163 +190,121 @@ def _ribbon(
     )
 
 
-def _stations(figure: go.Figure, path: Sequence[PathPoint], end: float, ink: Ink) -> None:
+def _stations(
+    figure: go.Figure, path: Sequence[PathPoint], room: Room, ink: Ink, narrow: bool
+) -> None:
+    """A thin rule at each station and its name above; names that would touch share one."""
+    size = NOTE_PX if narrow else TEXT_PX
+    above = Room(room.width, 20, room.x_range, (0, 1))
+    groups = _grouped(path, room, size)
+    # The last name has the least freedom, so it chooses first.
+    for group in [*groups[-1:], *groups[:-1]]:
+        words = " · ".join(one.name for one in group)
+        first, last = group[0].minutes, group[-1].minutes
+        spots: list[tuple[float, float, Anchor]] = [
+            (first, 0, "above"),
+            (first, 0, "above right"),
+            (last, 0, "above left"),
+        ]
+        figure.add_annotation(
+            {
+                **above.place(words, size, spots),
+                "y": 1,
+                "yref": "paper",
+                "text": words,
+                "font": {"size": size, "color": ink.text},
+            }
+        )
+    for one in path:
+        figure.add_vline(x=one.minutes, line={"width": 1, "color": ink.rule}, layer="below")
+
+
+def _grouped(path: Sequence[PathPoint], room: Room, size: float) -> list[list[PathPoint]]:
+    """Stations so close that their names would touch are told together."""
+    px_per_min = room.width / (room.x_range[1] - room.x_range[0])
     groups: list[list[PathPoint]] = []
     for one in path:
-        figure.add_shape(
-            type="line",
-            x0=one.minutes,
-            x1=one.minutes,
-            y0=0,
-            y1=1,
-            yref="paper",
-            line={"width": 1, "color": ink.rule},
-            layer="below",
-        )
-        if groups and (one.minutes - groups[-1][-1].minutes) / end < _NEAR:
+        near = groups and (one.minutes - groups[-1][-1].minutes) * px_per_min < 4 * size
+        if near:
             groups[-1].append(one)
         else:
             groups.append([one])
-    for group in groups:
-        at = group[0].minutes
-        last = group[-1].minutes >= end * (1 - _NEAR)
-        first = at <= end * _NEAR
-        figure.add_annotation(
-            x=group[-1].minutes if last else at,
-            y=1,
-            yref="paper",
-            yanchor="bottom",
-            xanchor="left" if first else "right" if last else "center",
-            text=" · ".join(one.name for one in group),
-            showarrow=False,
-            font={"size": TEXT_PX, "color": ink.text},
-        )
-
-
-@dataclass(frozen=True)
-class _Place:
-    """Where a point of the advice lies on the path, and its window there."""
-
-    minutes: float
-    low_c: float
-    high_c: float
-
-
-def _place(path: Sequence[PathPoint], point: Point) -> _Place | None:
-    name = STATIONS.get(point)
-    found = next((one for one in path if one.name == name), None)
-    return _Place(found.minutes, found.low_c, found.high_c) if found else None
+    return groups
 
 
 def _reading(
     figure: go.Figure,
-    path: Sequence[PathPoint],
+    place: PathPoint,
     reading: Reading,
-    end: float,
+    room: Room,
     units: UnitSystem,
     ink: Ink,
-    spot: int,
+    narrow: bool,
 ) -> None:
-    place = _place(path, reading.point)
-    if place is None or reading.value_c is None:
+    if reading.value_c is None:
         return
     verdict = verdict_of(reading.value_c, place.low_c, place.high_c, reading.doubt)
-    colour = {"hot": ink.hot, "cold": ink.cold, "unknown": ink.unknown, "inside": ink.text}[verdict]
+    colour = {"hot": ink.hot, "cold": ink.cold, "unknown": ink.unknown}.get(verdict, ink.text)
     symbol = {"hot": "triangle-up", "cold": "triangle-down", "unknown": "circle-open"}.get(
         verdict, "circle"
     )
-    value = temperature(reading.value_c, units)
+    x, value = place.minutes, temperature(reading.value_c, units)
     spread = temperature(reading.value_c + 2 * reading.sd_k, units) - value
-    outside = {
-        "hot": reading.value_c - place.high_c,
-        "cold": place.low_c - reading.value_c,
-    }.get(verdict)
-    words = f"<b>{round(value)}</b>"
-    if outside is not None:
-        words += f" {verdict} by {whole_delta(outside, units)}"
-    elif verdict == "unknown":
-        words += f" {reading.doubt or 'not trusted'}"
-    left = place.minutes > 0.75 * end
     figure.add_scatter(
-        name=f"reading {STATIONS[reading.point]}",
-        x=[place.minutes],
+        name=f"reading {place.name}",
+        x=[x],
         y=[value],
         mode="markers",
         marker={
             "symbol": symbol,
             "size": 15 if verdict in ("hot", "cold") else 12,
             "color": colour,
-            "line": {"width": 2 if verdict == "unknown" else 1.5, "color": colour
-                     if verdict == "unknown" else ink.sheet},
+            "line": {"width": 2, "color": colour if verdict == "unknown" else ink.sheet},
         },
-        error_y={
-            "type": "data",
-            "array": [spread],
-            "color": colour,
-            "thickness": 1.5,
-            "width": 5,
-            "visible": spread > 0,
-        },
-        hovertemplate=f"{STATIONS[reading.point]} %{{y:.1f}} {shown_unit('temperature', units)}"
-        "<extra></extra>",
+        error_y={"type": "data", "array": [spread], "color": colour, "thickness": 1.5, "width": 5},
+        hovertemplate=f"{place.name} %{{y:.1f}} {shown_unit('temperature', units)} "
+        f"{reading.doubt}<extra></extra>",
     )
-    figure.add_annotation(
-        x=place.minutes,
-        y=value,
-        xanchor="right" if left else "left",
-        yanchor="middle",
-        xshift=-14 if left else 14,
-        text=words,
-        showarrow=False,
-        font={"size": TEXT_PX + 2, "color": colour},
-        bgcolor="rgba(0,0,0,0)",
-        name=f"words {spot}",
-    )
-
-
-def _limits_drawn(advice: Advice, readings: Sequence[Reading]) -> list[Limit]:
-    """The tightest firm limit of each point and side that lies within reach of the window."""
-    tightest: dict[tuple[str, str], Limit] = {}
-    for limit in advice.limits:
-        if limit.authority == "computed" or _place(advice.path, limit.point) is None:
-            continue
-        held = tightest.get((limit.point, limit.side))
-        tighter = held is None or (
-            limit.value_c > held.value_c if limit.side == "low" else limit.value_c < held.value_c
-        )
-        if tighter:
-            tightest[(limit.point, limit.side)] = limit
-    low, high = _span(advice, readings)
-    return [
-        one for one in tightest.values() if low - _REACH_K <= one.value_c <= high + _REACH_K
+    after = {
+        "hot": f" hot by {whole_delta(reading.value_c - place.high_c, units)}",
+        "cold": f" cold by {whole_delta(place.low_c - reading.value_c, units)}",
+        "unknown": " not used",
+        "inside": "",
+    }[verdict]
+    words = f"{round(value)}{'' if narrow else after}"
+    spots: list[tuple[float, float, Anchor]] = [
+        (x, value, "right"),
+        (x, value, "left"),
+        (x, value, "above"),
+        (x, value, "below"),
     ]
-
-
-def _span(advice: Advice, readings: Sequence[Reading]) -> tuple[float, float]:
-    values = [one.low_c for one in advice.path] + [one.high_c for one in advice.path]
-    for reading in readings:
-        if reading.value_c is not None and _place(advice.path, reading.point):
-            values += [reading.value_c - 2 * reading.sd_k, reading.value_c + 2 * reading.sd_k]
-    return min(values), max(values)
+    figure.add_annotation(
+        {
+            **room.place(words, TEXT_PX + 2, spots, away=13),
+            "text": f"<b>{round(value)}</b>{'' if narrow else after}",
+            "font": {"size": TEXT_PX + 2, "color": colour},
+        }
+    )
 
 
 def _limit(
     figure: go.Figure,
     path: Sequence[PathPoint],
     limit: Limit,
-    end: float,
+    room: Room,
     units: UnitSystem,
     ink: Ink,
+    narrow: bool,
 ) -> None:
     """A dotted line with its name over the stretch of the path where the limit applies."""
     place = _place(path, limit.point)
     if place is None:
         return
+    end = max(path[-1].minutes, 1.0)
     wide = 0.34 * end
-    if place.minutes < end / 2:
-        start, stop, anchor = place.minutes, min(place.minutes + wide, end), "left"
-    else:
-        start, stop, anchor = max(place.minutes - wide, 0.0), place.minutes, "right"
+    early = place.minutes < end / 2
+    start = place.minutes if early else max(place.minutes - wide, 0.0)
+    stop = min(place.minutes + wide, end) if early else place.minutes
     value = temperature(limit.value_c, units)
     figure.add_scatter(
         name=f"limit {limit.point} {limit.side}",
@@ -281,53 +312,25 @@ def _limit(
         y=[value, value],
         mode="lines",
         line={"width": 1.5, "dash": "dot", "color": ink.text},
-        hovertemplate=f"{limit.name}: {limit.as_written or degrees(limit.value_c, units)}"
+        hovertemplate=f"{limit.name}, {limit.as_written or degrees(limit.value_c, units)}"
         f"<br>{limit.source}<extra></extra>",
     )
+    words = degrees(limit.value_c, units) + ("" if narrow else f" {limit.name}")
+    near, far = ("above", "below") if limit.side == "high" else ("below", "above")
+    spots: list[tuple[float, float, Anchor]] = [
+        (stop, value, "right"),
+        (start, value, "left"),
+        (stop, value, f"{near} left"),  # type: ignore[list-item]
+        (start, value, f"{near} right"),  # type: ignore[list-item]
+        (stop, value, f"{far} left"),  # type: ignore[list-item]
+        (start, value, f"{far} right"),  # type: ignore[list-item]
+    ]
+    if not early:
+        spots[:2] = spots[1::-1]
     figure.add_annotation(
-        x=start if anchor == "left" else stop,
-        y=value,
-        xanchor=anchor,
-        yanchor="bottom" if limit.side == "high" else "top",
-        text=f"{degrees(limit.value_c, units)} {limit.name}",
-        showarrow=False,
-        font={"size": NOTE_PX + 1, "color": ink.text},
+        {
+            **room.place(words, NOTE_PX + 1, spots, away=5),
+            "text": words,
+            "font": {"size": NOTE_PX + 1, "color": ink.text},
+        }
     )
-
-
-def _axes(
-    figure: go.Figure,
-    advice: Advice,
-    readings: Sequence[Reading],
-    limits: Sequence[Limit],
-    end: float,
-    units: UnitSystem,
-    ink: Ink,
-) -> None:
-    low, high = _span(advice, readings)
-    low = min([low, *(one.value_c for one in limits)])
-    high = max([high, *(one.value_c for one in limits)])
-    room = max(4.0, 0.14 * (high - low))
-    temperature_axis(figure, low - room, high + room, units, ink)
-    step = next((one for one in (5, 10, 20, 30, 60, 120, 240) if end / one <= 9), 480)
-    figure.update_xaxes(
-        range=[-0.015 * end, 1.02 * end],
-        tickvals=list(range(0, int(end) + 1, step)),
-        title_text="minutes after discharge",
-        title_standoff=4,
-    )
-
-
-def _empty(figure: go.Figure, ink: Ink) -> go.Figure:
-    figure.update_xaxes(visible=False)
-    figure.update_yaxes(visible=False)
-    figure.add_annotation(
-        x=0.5,
-        y=0.5,
-        xref="paper",
-        yref="paper",
-        text="No window to draw",
-        showarrow=False,
-        font={"size": TEXT_PX, "color": ink.quiet},
-    )
-    return figure

@@ -11,17 +11,15 @@ import plotly.graph_objects as go
 from numpy.typing import NDArray
 
 from advisor.figures.base import (
-    NOTE_PX,
     TEXT_PX,
     bare,
     degrees,
     temperature,
     temperature_axis,
-    whole_delta,
 )
 from advisor.figures.clock import local_ticks, naive_utc
 from advisor.figures.drawn import TicketPoint, Trace, WindowSpan
-from advisor.figures.ink import COLD_MARK, HOT_MARK, LIGHT, Ink
+from advisor.figures.ink import LIGHT, Ink
 from advisor.figures.thinning import thinned
 from advisor.units import UnitSystem, shown_unit
 
@@ -34,9 +32,9 @@ def trend(
     zone: ZoneInfo,
     units: UnitSystem = "si",
     ink: Ink = LIGHT,
-    height: int | None = None,
     tickets: Sequence[TicketPoint] = (),
     zoom: bool = False,
+    narrow: bool = False,
 ) -> go.Figure:
     """Figure of a temperature from ``start`` to ``end`` on its window, gaps left open.
 
@@ -48,11 +46,11 @@ def trend(
     zone : time zone of the words on the time axis
     units : 'si' or 'us'
     ink : palette
-    height : px, or None to fill the space given
     tickets : truck loads, drawn as small squares at their load-out temperature
     zoom : whether dragging along the time axis zooms
+    narrow : whether the figure is for a phone: fewer ticks
     """
-    figure = bare(ink, height, (62, 34, 10, 26))
+    figure = bare(ink, (62, 40, 8, 24))
     shown = thinned(readings)
     _windows(figure, windows, start, end, units, ink)
     _line(figure, shown, zone, units, ink)
@@ -61,11 +59,13 @@ def trend(
     low, high = _reach(shown, windows, tickets, start, end)
     room = max(2.0, 0.1 * (high - low))
     temperature_axis(figure, low - room, high + room, units, ink, most=5)
-    ticks, words = local_ticks(start, end, zone)
+    ticks, words = local_ticks(start, end, zone, most=4 if narrow else 9)
     figure.update_xaxes(
         type="date", range=[naive_utc(start), naive_utc(end)], tickvals=ticks, ticktext=words
     )
-    if zoom:
+    if not zoom:
+        _latest(figure, shown, units, ink)
+    else:
         figure.update_layout(dragmode="zoom")
         figure.update_xaxes(fixedrange=False)
     return figure
@@ -162,11 +162,11 @@ def _line(figure: go.Figure, shown: Trace, zone: ZoneInfo, units: UnitSystem, in
 def _outside(
     figure: go.Figure, shown: Trace, windows: Sequence[WindowSpan], units: UnitSystem, ink: Ink
 ) -> None:
-    """Heavier ink on what lies outside, and one mark with words at the peak of each side."""
+    """Heavier ink on what lies outside, and one mark with its number at the worst of each side."""
     below, above = outside_masks(shown, windows)
-    for side, mask, colour, symbol, mark in (
-        ("hot", above, ink.hot, "triangle-up", HOT_MARK),
-        ("cold", below, ink.cold, "triangle-down", COLD_MARK),
+    for side, mask, colour, symbol in (
+        ("hot", above, ink.hot, "triangle-up"),
+        ("cold", below, ink.cold, "triangle-down"),
     ):
         if not mask.any():
             continue
@@ -180,37 +180,44 @@ def _outside(
             line={"width": 3, "color": colour},
             hoverinfo="skip",
         )
-        peaks = _peaks(shown, mask, highest=side == "hot")
+        worst = int(np.nanargmax(values) if side == "hot" else np.nanargmin(values))
         figure.add_scatter(
-            name=f"{side} peaks",
-            x=shown.times[peaks].astype("datetime64[ms]"),
-            y=[_drawn(value, units) for value in shown.values_c[peaks]],
+            name=f"{side} peak",
+            x=shown.times[[worst]].astype("datetime64[ms]"),
+            y=[_drawn(float(values[worst]), units)],
             mode="markers",
-            marker={"symbol": symbol, "size": 11, "color": colour, "standoff": 3},
+            marker={"symbol": symbol, "size": 12, "color": colour},
             hoverinfo="skip",
         )
-        worst = peaks[int(np.argmax(np.abs(shown.values_c[peaks] - np.nanmean(shown.values_c))))]
         late = worst > 0.85 * shown.times.size
         figure.add_annotation(
             x=str(shown.times[worst].astype("datetime64[ms]")),
-            y=_drawn(shown.values_c[worst], units),
-            text=f"{mark} {degrees(float(shown.values_c[worst]), units)}",
+            y=_drawn(float(values[worst]), units),
+            text=f"<b>{degrees(float(values[worst]), units)}</b>",
             showarrow=False,
             xanchor="right" if late else "left",
             xshift=-10 if late else 10,
             yanchor="middle",
-            font={"size": NOTE_PX + 1, "color": colour},
+            font={"size": TEXT_PX, "color": colour},
         )
 
 
-def _peaks(shown: Trace, mask: NDArray[np.bool_], highest: bool) -> list[int]:
-    """The furthest reading of each unbroken stretch of the mask."""
-    edges = np.flatnonzero(np.diff(np.concatenate(([0], mask.astype(np.int8), [0]))))
-    sign = 1.0 if highest else -1.0
-    return [
-        int(begin + np.argmax(sign * shown.values_c[begin:stop]))
-        for begin, stop in zip(edges[::2], edges[1::2], strict=True)
-    ]
+def _latest(figure: go.Figure, shown: Trace, units: UnitSystem, ink: Ink) -> None:
+    """The newest reading as a number at the right edge."""
+    known = np.flatnonzero(np.isfinite(shown.values_c))
+    if known.size == 0:
+        return
+    last = float(shown.values_c[known[-1]])
+    figure.add_annotation(
+        x=1,
+        xref="paper",
+        y=temperature(last, units),
+        xanchor="left",
+        xshift=4,
+        text=f"<b>{degrees(last, units)}</b>",
+        showarrow=False,
+        font={"size": TEXT_PX + 1, "color": ink.text},
+    )
 
 
 def _tickets(

@@ -8,12 +8,12 @@ from typing import Any
 from dash import ClientsideFunction, Dash, Input, Output, dcc, html
 
 from advisor.figures.ink import style_sheet
-from advisor.screens import shift
+from advisor.screens import review, shift
 from advisor.screens.shift_parts import clock
 from advisor.screens.source import Source
 
 # The pages that exist, in the order of the navigation.
-PAGES: tuple[ModuleType, ...] = (shift,)
+PAGES: tuple[ModuleType, ...] = (shift, review)
 
 _INDEX = """<!DOCTYPE html>
 <html lang="en">
@@ -64,6 +64,7 @@ def _shell(source: Source, refresh_s: float) -> Any:
         [
             dcc.Location(id="address", refresh=False),
             dcc.Store(id="scheme"),
+            dcc.Store(id="narrow"),
             dcc.Interval(id="tick", interval=int(1000 * refresh_s)),
             html.A("Skip to the page", href="#content", className="skip"),
             html.Header(
@@ -98,8 +99,9 @@ def _shell(source: Source, refresh_s: float) -> Any:
 
 def _register_shell(app: Dash, source: Source) -> None:
     app.clientside_callback(
-        ClientsideFunction("screens", "scheme"),
+        ClientsideFunction("screens", "room"),
         Output("scheme", "data"),
+        Output("narrow", "data"),
         Input("address", "pathname"),
     )
 

@@ -26,7 +26,7 @@ PAGE = "shift"
 TITLE = "Shift"
 PATH = "/"
 # Heights of the figures [px]: with the setpoints they fill a screen of 768.
-HEIGHTS = {"path": 238, "trend": 138}
+HEIGHTS = {"path": 222, "trend": 122}
 
 
 def layout(source: Source, search: str | None) -> Any:
@@ -44,7 +44,7 @@ def layout(source: Source, search: str | None) -> Any:
             html.Div(
                 [
                     _set_now(options, asked.job or ""),
-                    _section("Heat path", "path", figure=True),
+                    _section("Heat path, minutes after discharge", "path", figure=True),
                     _section(f"Drum discharge, last {TREND_HOURS:.0f} hours", "trend", figure=True),
                 ],
                 className="column",
@@ -52,8 +52,8 @@ def layout(source: Source, search: str | None) -> Any:
             html.Div(
                 [
                     _section("Notices", "notices"),
-                    _section("Rest of the shift", "later"),
                     _section("This load", "load"),
+                    _section("Rest of the shift", "later"),
                     _section("Cautions", "cautions"),
                     _section("Why these numbers", "reasons"),
                 ],
@@ -146,18 +146,25 @@ def register(app: Dash, source: Source) -> None:
             "job": Input(id_of(PAGE, "job"), "value"),
             "units": Input("units", "value"),
             "scheme": Input("scheme", "data"),
+            "narrow": Input("narrow", "data"),
             "at": State(id_of(PAGE, "at"), "data"),
             "faults": State(id_of(PAGE, "faults"), "data"),
         },
     )  # fmt: skip
     def show(
-        _tick: int, job: str, units: UnitSystem, scheme: str, at: str | None, faults: list[str]
+        _tick: int | None,
+        job: str,
+        units: UnitSystem,
+        scheme: str,
+        narrow: bool,
+        at: str | None,
+        faults: list[str],
     ) -> dict[str, Any]:
         try:
             view = shift_view(source, job or None, datetime.fromisoformat(at) if at else None)
         except AdvisorError as error:
             return _refused(error, faults)
-        return shown(view, units, ink_of(scheme), faults)
+        return shown(view, units, ink_of(scheme), narrow, faults)
 
     @app.callback(
         Output(id_of(PAGE, "why"), "children"),
@@ -189,16 +196,18 @@ def register(app: Dash, source: Source) -> None:
     )
 
 
-def shown(view: ShiftView, units: UnitSystem, ink: Ink, faults: list[str]) -> dict[str, Any]:
+def shown(
+    view: ShiftView, units: UnitSystem, ink: Ink, narrow: bool, faults: list[str]
+) -> dict[str, Any]:
     """Every part of the page for one moment."""
     return {
         "alerts": parts.alerts(view, faults),
         "heading": parts.heading(view),
         "setpoints": parts.setpoint_cards(view, units),
-        "path": heat_path(view.advice, view.readings, units, ink),
+        "path": heat_path(view.advice, view.readings, units, ink, narrow),
         "path-words": heat_path_words(view.advice, view.readings, units),
         "trend": trend(
-            view.discharge, view.windows, view.trend_start, view.at, view.zone, units, ink
+            view.discharge, view.windows, view.trend_start, view.at, view.zone, units, ink, narrow=narrow
         ),
         "trend-words": trend_words(view.discharge, view.windows, units),
         "notices": parts.notice_list(notices(view, units)),

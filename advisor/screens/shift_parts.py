@@ -175,7 +175,7 @@ def _now(setpoint: Setpoint, reading: Reading | None, units: UnitSystem) -> obje
     value = degrees(reading.value_c, units)
     verdict = verdict_of(reading.value_c, setpoint.low_c, setpoint.high_c, reading.doubt)
     if verdict == "unknown":
-        words = [html.B(f"{MARKS[verdict]} {value}"), f" {reading.doubt}"]
+        words = [html.B(f"{MARKS[verdict]} {value}"), " not used"]
     elif verdict == "inside":
         words = ["now ", html.B(value)]
     else:
@@ -270,16 +270,15 @@ def missing_block(advice: Advice) -> object:
     )
 
 
-def error_block(error: AdvisorError) -> object:
+def error_block(error: AdvisorError, what: str = "No setpoints") -> object:
     """The faults that keep the page from answering, each with its place and its remedy."""
     return html.Div(
         [
-            html.P("No setpoints: the plant's data need attention.", className="refusal",
-                   role="alert"),
+            html.P(f"{what}: the plant's data need attention.", className="refusal", role="alert"),
             html.Ul([html.Li(str(fault)) for fault in error.faults]),
         ],
         className="clash",
-    )  # fmt: skip
+    )
 
 
 def notice_list(told: Sequence[Notice]) -> object:
@@ -345,14 +344,18 @@ def load_table(view: ShiftView, units: UnitSystem) -> object:
     if advice.rolling is not None:
         rolling = advice.rolling
         rows.append(
-            ("Time to roll (wanted "
-             f"{rolling.wanted_min:.0f})", f"{rolling.low_min:.0f} – {rolling.high_min:.0f} min")
-        )  # fmt: skip
+            (
+                f"Time to roll, {rolling.wanted_min:.0f} wanted",
+                f"{rolling.low_min:.0f} – {rolling.high_min:.0f} min",
+            )
+        )
     if advice.felt_truck_min is not None and advice.felt_paver_min is not None:
         rows.append(
-            ("A change now is felt, truck · paver",
-             f"{advice.felt_truck_min:.0f} · {advice.felt_paver_min:.0f} min")
-        )  # fmt: skip
+            (
+                "A change is felt, truck · paver",
+                f"{advice.felt_truck_min:.0f} · {advice.felt_paver_min:.0f} min",
+            )
+        )
     if not rows:
         return html.P("Nothing can be told of this load.", className="quiet")
     return html.Table(

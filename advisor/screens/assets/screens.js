@@ -2,12 +2,13 @@
 (function () {
   "use strict";
   const dark = window.matchMedia("(prefers-color-scheme: dark)");
+  const small = window.matchMedia("(max-width: 760px)");
   const scheme = () => (dark.matches ? "dark" : "light");
   let opener = null;
 
   window.dash_clientside = Object.assign({}, window.dash_clientside, {
     screens: {
-      scheme: scheme,
+      room: () => [scheme(), small.matches],
       // Focus goes to the sheet when it opens and back to what opened it when it closes.
       meet_sheet: function (hidden) {
         window.setTimeout(function () {
@@ -22,6 +23,9 @@
 
   dark.addEventListener("change", function () {
     window.dash_clientside.set_props("scheme", { data: scheme() });
+  });
+  small.addEventListener("change", function () {
+    window.dash_clientside.set_props("narrow", { data: small.matches });
   });
 
   document.addEventListener("click", function (event) {

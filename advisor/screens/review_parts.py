@@ -1,0 +1,237 @@
+"""The pieces of the review page, each from what it shows to components."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from datetime import datetime
+from typing import Any
+from zoneinfo import ZoneInfo
+
+import dash_ag_grid as dag
+from dash import html
+
+from advisor.figures.base import degrees
+from advisor.figures.week_field import Cell, cell_words
+from advisor.review.result import NO_WASTE, Excursion, Review
+from advisor.screens.choosing import value_of
+from advisor.screens.notices import LABELS
+from advisor.screens.words import (
+    MARKS,
+    energy_words,
+    mass_words,
+    moment_words,
+    money_words,
+    unit_words,
+)
+from advisor.units import UnitSystem, shown_number, shown_unit
+
+# A chosen excursion is shown with this much before and after it.
+AROUND_MIN = 30
+
+
+def summary(review: Review, units: UnitSystem) -> Any:
+    """What was made, how much of it outside, and what that is worth."""
+    whole = max(review.tonnes, 1e-9)
+    rows: list[tuple[Any, str, str]] = [
+        ("Made", mass_words(review.tonnes, units), ""),
+        ("Inside the window", *_share(review.in_window_tonnes, whole, units)),
+        (_marked("hot"), *_share(review.hot_tonnes, whole, units)),
+        (_marked("cold"), *_share(review.cold_tonnes, whole, units)),
+        ("No advice in force", *_share(review.no_advice_tonnes, whole, units)),
+    ]
+    waste = [
+        ("Too much fuel", energy_words(review.waste.fuel_kwh, units)),
+        ("worth", money_words(review.waste.money, review.currency)),
+        ("CO2", _range(review.waste.co2_kg.low, review.waste.co2_kg.high, "kg")),
+        ("of it in start-ups and changes", energy_words(review.start_up_waste.fuel_kwh, units)),
+    ]
+    return [
+        html.Table(
+            html.Tbody(
+                [
+                    html.Tr(
+                        [
+                            html.Th(name, scope="row"),
+                            html.Td(mass, className="number"),
+                            html.Td(share, className="number"),
+                        ]
+                    )
+                    for name, mass, share in rows
+                ]
+            )
+        ),
+        html.Table(
+            html.Tbody(
+                [
+                    html.Tr([html.Th(name, scope="row"), html.Td(words, className="number")])
+                    for name, words in waste
+                ]
+            )
+        ),
+        html.Ul([html.Li(one) for one in review.cautions], className="cautions"),
+    ]
+
+
+def _share(tonnes: float, whole: float, units: UnitSystem) -> tuple[str, str]:
+    return mass_words(tonnes, units), f"{100 * tonnes / whole:.1f} %"
+
+
+def _marked(side: str) -> Any:
+    return html.Span(f"{MARKS[side]} {side.capitalize()}", className=side)  # type: ignore[index]
+
+
+def _range(low: float, high: float, unit: str) -> str:
+    return f"{low:,.0f} – {high:,.0f} {unit}"
+
+
+def field_title(units: UnitSystem) -> str:
+    """What the field shows, with its unit."""
+    return f"Mean distance from the window by day and hour, {unit_words(units)}"
+
+
+def empty_review(plant: str, start: datetime, end: datetime, time_zone: str) -> Review:
+    """A period with nothing in it."""
+    return Review(
+        plant, start, end, time_zone, 0, 0, 0, (), (), (), (), (), 0.0, 0.0, 0.0, 0.0, 0.0,
+        NO_WASTE, NO_WASTE, "", "",
+    )  # fmt: skip
+
+
+def hour_options(
+    review: Review, units: UnitSystem, chosen: Sequence[Cell] = ()
+) -> list[dict[str, str]]:
+    """The hours that can be chosen by name: those outside, and any that is chosen already."""
+    return [
+        {"label": cell_words(one, units), "value": value_of((one.day, one.hour))}
+        for one in review.cells
+        if one.distance_k or (one.day, one.hour) in chosen
+    ]
+
+
+def states_table(review: Review, units: UnitSystem) -> Any:
+    """How long the plant was in each state, and what it made there."""
+    return html.Table(
+        [
+            html.Thead(html.Tr([html.Th("state"), html.Th("time"), html.Th("made")])),
+            html.Tbody(
+                [
+                    html.Tr(
+                        [
+                            html.Th(one.state, scope="row"),
+                            html.Td(_hours(one.minutes), className="number"),
+                            html.Td(mass_words(one.tonnes, units), className="number"),
+                        ]
+                    )
+                    for one in review.states
+                ]
+            ),
+        ]
+    )
+
+
+def _hours(minutes: float) -> str:
+    return f"{minutes / 60:.1f} h" if minutes >= 60 else f"{minutes:.0f} min"
+
+
+def set_aside_table(review: Review, zone: ZoneInfo) -> Any:
+    """What was not used, why, and that the counts add up."""
+    rows = [
+        html.Tr(
+            [
+                html.Th(one.reason, scope="row"),
+                html.Td(one.signal),
+                html.Td(_when(one.first, one.last, zone), className="note"),
+                html.Td(f"{one.count:,}", className="number"),
+            ]
+        )
+        for one in review.set_aside
+    ]
+    return [
+        html.P(
+            f"{review.rows_read:,} rows read = {review.rows_used:,} used + "
+            f"{review.rows_set_aside:,} set aside. A row may carry several marked readings."
+        ),
+        html.Table(html.Tbody(rows)) if rows else html.P("Nothing was set aside."),
+    ]
+
+
+def _when(first: Any, last: Any, zone: ZoneInfo) -> str:
+    if first is None:
+        return ""
+    if last is None or last == first:
+        return moment_words(first, zone)
+    return f"{moment_words(first, zone)} – {moment_words(last, zone)}"
+
+
+def excursion_rows(
+    excursions: Sequence[Excursion], zone: ZoneInfo, units: UnitSystem, currency: str
+) -> list[dict[str, Any]]:
+    """Rows of the excursions table, with the times of each in UTC for the trace."""
+    return [
+        {
+            "start": one.start.isoformat(),
+            "end": one.end.isoformat(),
+            "when": moment_words(one.start, zone),
+            "side": f"{MARKS[one.side]} {one.side}",
+            "where": LABELS[one.point],
+            "minutes": round(one.minutes),
+            "tonnes": round(shown_number(1000 * one.tonnes, "mass", units)),
+            "peak": round(shown_number(one.peak_k, "temperature_delta", units), 1),
+            "limit": int(degrees(one.limit_c, units)),
+            "fuel": round(
+                shown_number(one.waste.fuel_kwh.middle * 3.6e6, "energy", units),
+                0 if units == "si" else 2,
+            ),
+            "money": money_words(one.waste.money, currency) if one.side == "hot" else "",
+            "mix": one.mix,
+            "job": one.job,
+            "state": one.state,
+            "cause": one.cause,
+            "evidence": one.evidence,
+        }
+        for one in excursions
+    ]
+
+
+def excursion_columns(units: UnitSystem) -> list[dict[str, Any]]:
+    """Columns of the excursions table, each with its unit."""
+    degree = unit_words(units)
+
+    def number(field: str, name: str, width: int) -> dict[str, Any]:
+        return {"field": field, "headerName": name, "width": width, "type": "rightAligned"}
+
+    return [
+        {"field": "when", "headerName": "start", "width": 145, "pinned": "left"},
+        {"field": "side", "headerName": "side", "width": 90},
+        {"field": "where", "headerName": "where", "width": 140},
+        number("minutes", "min", 75),
+        number("tonnes", shown_unit("mass", units), 75),
+        number("peak", f"peak, {degree}", 100),
+        number("limit", f"limit, {degree}", 100),
+        number("fuel", shown_unit("energy", units), 85),
+        {"field": "money", "headerName": "money", "width": 130},
+        {"field": "mix", "headerName": "mix", "width": 110},
+        {"field": "job", "headerName": "job", "width": 90},
+        {"field": "state", "headerName": "state", "width": 115},
+        {"field": "cause", "headerName": "likely cause", "minWidth": 240, "flex": 1},
+        {"field": "evidence", "headerName": "evidence", "minWidth": 320, "flex": 2},
+    ]  # fmt: skip
+
+
+def excursion_grid(grid_id: str) -> Any:
+    """The empty table of excursions; one row can be chosen to see its trace."""
+    return dag.AgGrid(
+        id=grid_id,
+        columnDefs=[],
+        rowData=[],
+        defaultColDef={"resizable": True, "sortable": True},
+        dashGridOptions={
+            "domLayout": "autoHeight",
+            "rowSelection": {"mode": "singleRow", "checkboxes": False, "enableClickSelection": True},
+            "overlayNoRowsTemplate": "No excursion in what is chosen.",
+            "pagination": True,
+            "paginationPageSize": 20,
+            "paginationPageSizeSelector": False,
+        },
+        className="excursion-grid",
+    )  # fmt: skip
