@@ -1,0 +1,279 @@
+"""The mat: how it cools on its base, and how long until the end temperature of rolling."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, fields
+from typing import Literal
+
+import numpy as np
+from numpy.typing import ArrayLike, NDArray
+
+from advisor.errors import Fault, FaultyInput, raise_if_any
+from advisor.heat.conduction import Conduction, conduct, growing_times_s
+from advisor.heat.ground import BaseThermal
+from advisor.heat.layers import Layer
+from advisor.heat.materials import MixThermal, film_drop_k
+from advisor.heat.surroundings import Face, Moving, Series
+
+Floats = NDArray[np.float64]
+Criterion = Literal["mean", "mid"]
+
+LONGEST_S = 6 * 3600.0  # cooling that takes longer than this counts as not reached
+_STEPS = 40
+_REACH = 3.5  # depth of base taken, in spreads sqrt(diffusivity * time); 2.5 would do
+
+
+@dataclass(frozen=True)
+class Mat:
+    """A mat just laid, its base and its weather; fields broadcast over cases.
+
+    ``lift_m`` is the compacted thickness. ``base_c`` is the surface of the base; with
+    ``base_deep_c`` the base runs towards that with depth. Air, coefficient, sun and sky may be
+    Series counted from laying. ``coefficient_wm2k`` is convection alone, ``sun_wm2`` what falls
+    on the horizontal, ``evaporation_wm2`` what rain or spray carries off. ``film_kgm2`` is water
+    standing on the base, ``contact_m2kw`` the resistance between mat and base.
+    """
+
+    lift_m: ArrayLike
+    base_c: ArrayLike
+    air_c: Moving
+    coefficient_wm2k: Moving
+    sun_wm2: Moving
+    sky_c: Moving
+    mix: MixThermal
+    base: BaseThermal
+    base_deep_c: ArrayLike | None = None
+    film_kgm2: ArrayLike = 0.0
+    evaporation_wm2: ArrayLike = 0.0
+    contact_m2kw: ArrayLike = 0.0
+
+
+def cool_mat(mat: Mat, laydown_c: ArrayLike, times_s: ArrayLike, *, grids: int = 2) -> Conduction:
+    """Temperatures of a mat laid at ``laydown_c`` [C], at ``times_s`` [s] after laying.
+
+    ``times_s`` (times,) or (times, cases) rises from 0 and sets the steps. The first layer of the
+    answer is the mat, the second its base; its depths are the middle and the bottom of the mat.
+    ``grids`` 1 is quick and within about 0.3 K.
+
+    Raises FaultyInput for a lift, a coefficient or a temperature that cannot be.
+    """
+    _refuse_impossible(mat, laydown_c)
+    times = np.asarray(times_s, float)
+    lift = np.asarray(mat.lift_m, float)
+    start = np.asarray(laydown_c, float) - film_drop_k(
+        mat.film_kgm2, mat.base_c, lift, mat.mix.capacity_jm3k
+    )
+    reach = _REACH * np.sqrt(mat.base.diffusivity_m2s * times[-1])
+    layers = (
+        Layer(lift, mat.mix.conductivity_wmk, mat.mix.capacity_jm3k, start, cells=8),
+        Layer(
+            reach,
+            mat.base.conductivity_wmk,
+            mat.base.capacity_jm3k,
+            mat.base_c,
+            deep_c=mat.base_deep_c,
+            contact_m2kw=mat.contact_m2kw,
+            latent_jm3=mat.base.latent_jm3,
+            cells=10,
+            spacing="top",
+        ),
+    )
+    depths = np.stack([0.5 * lift, lift]).reshape(2, -1)
+    return conduct(layers, _top(mat), times, depths_m=depths, grids=grids)
+
+
+def rolling_time_s(
+    mat: Mat, laydown_c: ArrayLike, end_c: ArrayLike, *, criterion: Criterion = "mean"
+) -> Floats:
+    """Time [s] from laying until the mat has fallen to ``end_c``; infinite where it never does.
+
+    ``criterion`` says which temperature of the mat is meant: its thickness ``mean``, or ``mid``
+    depth, which is 10 to 20 % later. 0 where it is laid at or below ``end_c``; infinite also
+    where it takes longer than six hours.
+    """
+    _refuse_criterion(criterion)
+    laydown, end = np.broadcast_arrays(np.asarray(laydown_c, float), np.asarray(end_c, float))
+    shape = cases_of(mat, laydown)
+    count = int(np.prod(shape))
+    laydown, end = (np.broadcast_to(one, shape).reshape(count) for one in (laydown, end))
+    found = np.full(count, np.inf)
+    open_ = np.arange(count)
+    until = np.clip(1.6 * _rough_time_s(mat, laydown, end), 60.0, LONGEST_S)
+    until = np.broadcast_to(until, (count,))
+    while open_.size:
+        part = some_cases(mat, open_, count)
+        horizon = until[open_]
+        times = steps_until_s(part, horizon)
+        values = chosen(cool_mat(part, laydown[open_], times), criterion)
+        found[open_] = first_crossing_s(times, values, end[open_])
+        left = ~np.isfinite(found[open_]) & (horizon < LONGEST_S)
+        until = np.minimum(4.0 * until, LONGEST_S)
+        open_ = open_[left]
+    found[found > LONGEST_S] = np.inf
+    return found.reshape(shape)
+
+
+def chosen(cooling: Conduction, criterion: Criterion) -> Floats:
+    """Temperature [C] (times, cases) of the mat that ``criterion`` names."""
+    return cooling.mean_c[0] if criterion == "mean" else cooling.depth_c[0]
+
+
+def first_crossing_s(times_s: Floats, values_c: Floats, end_c: ArrayLike) -> Floats:
+    """First time [s] (cases,) at which ``values_c`` (times, cases) are down to ``end_c``.
+
+    0 where they start there, infinite where they never come there. Inverse quadratic in the root
+    of time, in which cooling is nearly straight.
+    """
+    end = np.asarray(end_c, float)
+    reached = values_c <= end
+    at = reached.argmax(axis=0)
+    case = np.arange(values_c.shape[1])
+    last = len(values_c) - 1
+    here = np.clip(at, 1, last)
+    third = np.where(here >= 2, here - 2, np.minimum(here + 1, last))
+    roots = np.broadcast_to(np.sqrt(times_s).reshape(len(times_s), -1), values_c.shape)
+    nodes = [(values_c[i, case], roots[i, case]) for i in (here - 1, here, third)]
+    (v0, x0), (v1, x1), (v2, x2) = nodes
+    with np.errstate(divide="ignore", invalid="ignore"):
+        straight = x0 + (x1 - x0) * (end - v0) / (v1 - v0)
+        curved = (
+            x0 * (end - v1) * (end - v2) / ((v0 - v1) * (v0 - v2))
+            + x1 * (end - v0) * (end - v2) / ((v1 - v0) * (v1 - v2))
+            + x2 * (end - v0) * (end - v1) / ((v2 - v0) * (v2 - v1))
+        )
+    usable = np.isfinite(curved) & (curved >= x0) & (curved <= x1)
+    root = np.where(usable, curved, straight)
+    crossing = np.where(at == 0, 0.0, root**2)
+    return np.where(reached.any(axis=0), crossing, np.inf)
+
+
+def cases_of(mat: Mat, *others: ArrayLike) -> tuple[int, ...]:
+    """Shape over cases of everything the mat and ``others`` hold."""
+    inner = [getattr(part, one.name) for part in (mat.mix, mat.base) for one in fields(part)]
+    own = [getattr(mat, one.name) for one in fields(mat) if one.name not in ("mix", "base")]
+    shapes = [
+        one.values.shape[1:] if isinstance(one, Series) else np.shape(one)
+        for one in (*own, *inner, *others)
+        if one is not None
+    ]
+    return np.broadcast_shapes(*shapes)
+
+
+def some_cases(mat: Mat, index: NDArray[np.intp], count: int) -> Mat:
+    """The mat of the cases at ``index`` out of ``count``."""
+
+    def pick(value: Moving | None) -> Moving | None:
+        if value is None:
+            return None
+        if isinstance(value, Series):
+            moving = value.values
+            return Series(value.times_s, moving[:, index]) if moving.ndim == 2 else value
+        array = np.asarray(value, float)
+        return array if array.size == 1 else np.broadcast_to(array, (count,))[index]
+
+    def picked(part: object) -> dict[str, object]:
+        return {
+            one.name: pick(getattr(part, one.name))
+            for one in fields(part)  # type: ignore[arg-type]
+            if one.name not in ("mix", "base")
+        }
+
+    return Mat(  # type: ignore[arg-type]
+        **picked(mat), mix=MixThermal(**picked(mat.mix)), base=BaseThermal(**picked(mat.base))
+    )
+
+
+def _top(mat: Mat) -> Face:
+    sun = mat.sun_wm2
+    absorbed = (
+        sun.scaled(mat.mix.absorptivity)
+        if isinstance(sun, Series)
+        else np.asarray(sun, float) * np.asarray(mat.mix.absorptivity, float)
+    )
+    if np.any(np.asarray(mat.evaporation_wm2)):
+        absorbed = (
+            absorbed.plus(-np.asarray(mat.evaporation_wm2, float))
+            if isinstance(absorbed, Series)
+            else absorbed - np.asarray(mat.evaporation_wm2, float)
+        )
+    return Face(mat.coefficient_wm2k, mat.air_c, mat.mix.emissivity, mat.sky_c, absorbed)
+
+
+def steps_until_s(mat: Mat, until_s: Floats, steps: int = _STEPS) -> Floats:
+    """Times [s] that step to ``until_s``: each case its own, (steps + 1, cases).
+
+    Where the weather moves they are shared, (times,), and pass through its knots.
+    """
+    knots = _top(mat).knots_s()
+    if not knots.size:
+        return growing_times_s(until_s, steps)
+    longest = float(np.max(until_s))
+    inside = knots[(knots > 0) & (knots < longest)]
+    return np.unique(np.concatenate([growing_times_s(longest, steps), inside]))
+
+
+def value_at(times_s: Floats, values_c: Floats, at_s: ArrayLike) -> Floats:
+    """Value (cases,) at ``at_s`` of ``values_c`` (times, cases), quadratic in the root of time."""
+    at = np.sqrt(np.broadcast_to(np.asarray(at_s, float), values_c.shape[1:]))
+    roots = np.broadcast_to(np.sqrt(times_s).reshape(len(times_s), -1), values_c.shape)
+    first = np.clip((roots < at * (1 - 1e-12)).sum(axis=0) - 2, 0, len(roots) - 3)
+    case = np.arange(values_c.shape[1])
+    places = [roots[first + i, case] for i in range(3)]
+    value = np.zeros(values_c.shape[1])
+    for i, own in enumerate(places):
+        one, two = (place for j, place in enumerate(places) if j != i)
+        weight = (at - one) * (at - two) / ((own - one) * (own - two))
+        value += weight * values_c[first + i, case]
+    return value
+
+
+def _rough_time_s(mat: Mat, laydown_c: Floats, end_c: Floats) -> Floats:
+    """Cooling time [s] to within a factor of two, to choose the steps by.
+
+    Heat to a cold base grows with the root of time, heat to the air with time.
+    """
+    top = _top(mat).at(0.0)
+    capacity = mat.mix.capacity_jm3k * np.asarray(mat.lift_m, float)
+    own = np.sqrt(mat.mix.capacity_jm3k * np.asarray(mat.mix.conductivity_wmk, float))
+    base = np.sqrt(mat.base.capacity_jm3k * np.asarray(mat.base.conductivity_wmk, float))
+    middle = 0.5 * (laydown_c + end_c)
+    down = own * base / (own + base) * (laydown_c - mat.base_c) * (2.0 / np.sqrt(np.pi))
+    up = (np.asarray(top.coefficient_wm2k) + 7.0) * 0.7 * (middle - top.air_c) - top.gain_wm2
+    down, up = np.maximum(down, 0.0), np.maximum(up, 10.0)
+    heat = capacity * np.maximum(laydown_c - end_c, 0.0)
+    root = (np.sqrt(down**2 + 4.0 * up * heat) - down) / (2.0 * up)
+    return np.asarray(1.5 * root**2)
+
+
+def _refuse_criterion(criterion: str) -> None:
+    if criterion not in ("mean", "mid"):
+        raise FaultyInput.of(
+            "criterion-unknown",
+            f"'{criterion}' is not a temperature of the mat.",
+            "Say 'mean' for the thickness mean or 'mid' for mid-depth.",
+            field="criterion",
+            value=criterion,
+        )
+
+
+def _refuse_impossible(mat: Mat, laydown_c: ArrayLike) -> None:
+    checks: tuple[tuple[str, ArrayLike, float, float, str], ...] = (
+        ("lift_m", mat.lift_m, 0.001, 1.0, "m"),
+        ("laydown_c", laydown_c, -50.0, 400.0, "C"),
+        ("base_c", mat.base_c, -60.0, 200.0, "C"),
+        ("mix.conductivity_wmk", mat.mix.conductivity_wmk, 0.05, 20.0, "W/mK"),
+        ("mix.density_kgm3", mat.mix.density_kgm3, 500.0, 5000.0, "kg/m3"),
+        ("mix.specific_heat_jkgk", mat.mix.specific_heat_jkgk, 100.0, 6000.0, "J/kgK"),
+        ("base.conductivity_wmk", mat.base.conductivity_wmk, 0.02, 20.0, "W/mK"),
+    )
+    raise_if_any(
+        Fault(
+            "out-of-range",
+            f"must lie between {low:g} and {high:g} {unit}.",
+            "",
+            field=name,
+            value=f"{np.min(values):g} to {np.max(values):g}",
+        )
+        for name, values, low, high, unit in checks
+        if not np.all((np.asarray(values) >= low) & (np.asarray(values) <= high))
+    )

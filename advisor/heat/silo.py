@@ -1,0 +1,186 @@
+"""Mix in a silo: bulk, first material out of the cone, wall crust, and how long it may wait."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import ArrayLike, NDArray
+from scipy.special import erfcx
+
+from advisor.errors import FaultyInput
+from advisor.heat.materials import MixThermal
+from advisor.heat.product import Span, face_share, start_share
+
+Floats = NDArray[np.float64]
+
+
+@dataclass(frozen=True)
+class Silo:
+    """A silo and the mix in it; fields broadcast over cases.
+
+    ``fill_m`` is the height of mix in the barrel, ``cone_m`` the height of the cone, full.
+    Coefficients are from the mix to the air, insulation and bridges included. A heated cone is
+    ``cone_c``, the temperature its heaters hold outside the mix, and the coefficient to that;
+    None leaves the cone to the air.
+    """
+
+    radius_m: ArrayLike
+    fill_m: ArrayLike
+    cone_m: ArrayLike
+    wall_wm2k: ArrayLike
+    top_wm2k: ArrayLike
+    cone_wm2k: ArrayLike
+    cone_c: ArrayLike | None = None
+
+    @classmethod
+    def holding(
+        cls,
+        mass_kg: ArrayLike,
+        radius_m: ArrayLike,
+        cone_m: ArrayLike,
+        density_kgm3: ArrayLike,
+        *,
+        wall_wm2k: ArrayLike,
+        top_wm2k: ArrayLike,
+        cone_wm2k: ArrayLike,
+        cone_c: ArrayLike | None = None,
+    ) -> Silo:
+        """The silo filled with ``mass_kg`` of loose mix; a fifth of a metre of barrel at least."""
+        radius, cone = np.asarray(radius_m, float), np.asarray(cone_m, float)
+        area = np.pi * radius**2
+        volume = np.asarray(mass_kg, float) / np.asarray(density_kgm3, float)
+        fill = np.maximum((volume - area * cone / 3.0) / area, 0.2)
+        return cls(radius, fill, cone, wall_wm2k, top_wm2k, cone_wm2k, cone_c)
+
+    @property
+    def cone_volume_m3(self) -> Floats:
+        """Volume of the cone [m3]."""
+        radius, cone = np.asarray(self.radius_m, float), np.asarray(self.cone_m, float)
+        return np.asarray(np.pi * radius**2 * cone / 3.0)
+
+    @property
+    def cone_ball_m(self) -> Floats:
+        """Radius [m] of the ball with as much volume behind each area of face as the cone."""
+        radius, cone = np.asarray(self.radius_m, float), np.asarray(self.cone_m, float)
+        return np.asarray(radius * cone / np.hypot(radius, cone))
+
+
+@dataclass(frozen=True)
+class StoredMix:
+    """Temperatures [C] after a hold: ``mean_c`` of all, ``first_out_c`` of the cone, ``wall_c``."""
+
+    mean_c: Floats
+    first_out_c: Floats
+    wall_c: Floats
+
+
+def retained_in_silo(hold_s: ArrayLike, silo: Silo, mix: MixThermal) -> Floats:
+    """Share [1] of its excess over the air that the mean of the barrel keeps over ``hold_s``.
+
+    Barrel as a cylinder between its top and its cone, all towards the air; a heated cone adds to
+    it, see ``stored_mix``. Within 0.1 K of the Bessel series for two days of an ordinary silo.
+
+    Raises FaultyInput for a negative time.
+    """
+    _refuse_negative(hold_s)
+    return start_share(_spans(silo), hold_s, mix)
+
+
+def cone_share(hold_s: ArrayLike, silo: Silo, mix: MixThermal) -> Floats:
+    """Share [1] of the cone's surroundings in the mean of the barrel, for a heated cone."""
+    return face_share(_spans(silo), 1, False, hold_s, mix)
+
+
+def stored_mix(
+    hold_s: ArrayLike, silo: Silo, mix: MixThermal, start_c: ArrayLike, air_c: ArrayLike
+) -> StoredMix:
+    """Temperatures of mix stored at ``start_c`` for ``hold_s`` [s] in air at ``air_c``.
+
+    The mean is of all mix, cone included. The first out is the mix of the cone, with as much face
+    for its volume as a ball (derived); it comes out first and coldest. The wall is the crust of
+    the barrel, which comes last where the flow is a funnel (common practice).
+
+    Raises FaultyInput for a negative time.
+    """
+    start, air = np.asarray(start_c, float), np.asarray(air_c, float)
+    barrel = air + retained_in_silo(hold_s, silo, mix) * (start - air)
+    sees = air
+    if silo.cone_c is not None:
+        sees = np.asarray(silo.cone_c, float)
+        barrel = barrel + cone_share(hold_s, silo, mix) * (sees - air)
+    ball = Span(silo.cone_ball_m, silo.cone_wm2k, curvature=2)
+    first = sees + ball.retained(hold_s, mix) * (start - sees)
+    volume = np.pi * np.asarray(silo.radius_m, float) ** 2 * np.asarray(silo.fill_m, float)
+    cone = silo.cone_volume_m3
+    spread = np.sqrt(mix.diffusivity_m2s * np.asarray(hold_s, float))
+    ratio = np.asarray(silo.wall_wm2k, float) / np.asarray(mix.conductivity_wmk, float)
+    wall = air + erfcx(ratio * spread) * (start - air)
+    return StoredMix(
+        mean_c=np.asarray((volume * barrel + cone * first) / (volume + cone)),
+        first_out_c=np.asarray(first),
+        wall_c=np.asarray(wall),
+    )
+
+
+def hold_left_s(
+    limit_c: ArrayLike,
+    silo: Silo,
+    mix: MixThermal,
+    start_c: ArrayLike,
+    air_c: ArrayLike,
+    *,
+    longest_s: float = 72 * 3600.0,
+) -> Floats:
+    """Time [s] until the first mix out of the cone is down to ``limit_c``.
+
+    At most ``longest_s``, and infinite where it is still warmer then. A rule on hours in the silo
+    is a rule, not part of this model.
+    """
+    limit = np.asarray(limit_c, float)
+
+    def first_out_c(hold_s: ArrayLike) -> Floats:
+        return stored_mix(hold_s, silo, mix, start_c, air_c).first_out_c
+
+    low = np.zeros(np.broadcast_shapes(limit.shape, first_out_c(1.0).shape))
+    high = np.full_like(low, longest_s)
+    lasts = first_out_c(high) > limit
+    for _ in range(30):
+        middle = 0.5 * (low + high)
+        warm = first_out_c(middle) > limit
+        low, high = np.where(warm, middle, low), np.where(warm, high, middle)
+    return np.where(lasts, np.inf, high)
+
+
+def wall_coefficient_wm2k(
+    thickness_m: ArrayLike,
+    conductivity_wmk: ArrayLike,
+    *,
+    inside_wm2k: ArrayLike = np.inf,
+    outside_wm2k: ArrayLike = 20.0,
+    bridges: ArrayLike = 0.0,
+) -> Floats:
+    """Coefficient [W/m2K] of an insulated wall, raised by ``bridges`` [1] for supports and gates.
+
+    1/(1/inside + thickness/conductivity + 1/outside); bridges add 20 to 50 % (from memory).
+    """
+    resistance = (
+        1.0 / np.asarray(inside_wm2k, float)
+        + np.asarray(thickness_m, float) / np.asarray(conductivity_wmk, float)
+        + 1.0 / np.asarray(outside_wm2k, float)
+    )
+    return np.asarray((1.0 + np.asarray(bridges, float)) / resistance)
+
+
+def _spans(silo: Silo) -> tuple[Span, Span]:
+    return (
+        Span(silo.radius_m, silo.wall_wm2k, curvature=1),
+        Span(silo.fill_m, silo.top_wm2k, silo.cone_wm2k),
+    )
+
+
+def _refuse_negative(hold_s: ArrayLike) -> None:
+    if (np.asarray(hold_s, float) < 0).any():
+        raise FaultyInput.of(
+            "hold-negative", "Mix cannot be held for less than no time.", field="hold_s"
+        )
