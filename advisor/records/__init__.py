@@ -1,0 +1,22 @@
+"""Records: dated facts in one SQLite file, added and never changed; text in, text out."""
+
+from advisor.records.entry import Entry
+from advisor.records.files import ImportReport, export_files, import_files
+from advisor.records.kinds import KINDS
+from advisor.records.opening import open_records, store_path
+from advisor.records.store import Records
+from advisor.records.writing import correction, new_entry, withdrawal
+
+__all__ = [
+    "KINDS",
+    "Entry",
+    "ImportReport",
+    "Records",
+    "correction",
+    "export_files",
+    "import_files",
+    "new_entry",
+    "open_records",
+    "store_path",
+    "withdrawal",
+]

@@ -17,14 +17,17 @@ Model = TypeVar("Model", bound=BaseModel)
 
 
 def read_model(
-    model: type[Model], source: YamlSource, steps: Steps = ()
+    model: type[Model],
+    source: YamlSource,
+    steps: Steps = (),
+    context: dict[str, Any] | None = None,
 ) -> tuple[Model | None, list[Fault]]:
     """The model of the value at ``steps`` of ``source``, or None with everything wrong in it."""
     value = source.value
     for step in steps:
         value = value[step]
     try:
-        return model.model_validate({} if value is None else value), []
+        return model.model_validate({} if value is None else value, context=context), []
     except ValidationError as error:
         return None, [_fault(each, model, source, steps) for each in error.errors()]
 

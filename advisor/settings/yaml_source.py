@@ -45,6 +45,18 @@ for _tag, _written, _first in (
         ["" if letter == "\0" else letter for letter in _first],
     )
 
+
+class _PlainDumper(yaml.SafeDumper):
+    """Writes text in quotes exactly where the reader above would take it for something else."""
+
+    yaml_implicit_resolvers = _PlainLoader.yaml_implicit_resolvers
+
+
+def yaml_text(value: Any) -> str:
+    """``value`` (text, numbers, lists, keys) as YAML that ``read_yaml`` reads back the same."""
+    return str(yaml.dump(value, Dumper=_PlainDumper, sort_keys=False, allow_unicode=True, width=98))
+
+
 _READERS: dict[str, Callable[[str], Any]] = {
     "tag:yaml.org,2002:str": str,
     "tag:yaml.org,2002:int": int,
