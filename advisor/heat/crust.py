@@ -8,20 +8,19 @@ and u = x/(2 s), the shortfall at depth x is S = erfc(u) - exp(-u^2) erfcx(u + H
 from __future__ import annotations
 
 import numpy as np
-from numpy.typing import ArrayLike, NDArray
 from scipy.special import erfc, erfcx
 
-Floats = NDArray[np.float64]
+from advisor.heat.arrays import Floats, Numbers
 
 _LEAST = 1e-12  # a perfectly insulated face is taken at this coefficient over conductivity [1/m]
 
 
 def shortfall(
-    depth_m: ArrayLike,
-    coefficient_wm2k: ArrayLike,
-    duration_s: ArrayLike,
-    conductivity_wmk: ArrayLike,
-    diffusivity_m2s: ArrayLike,
+    depth_m: Numbers,
+    coefficient_wm2k: Numbers,
+    duration_s: Numbers,
+    conductivity_wmk: Numbers,
+    diffusivity_m2s: Numbers,
 ) -> Floats:
     """Share [1] of the excess over the surroundings that is gone at ``depth_m`` [m]."""
     spread, ratio = _spread_ratio(coefficient_wm2k, duration_s, conductivity_wmk, diffusivity_m2s)
@@ -30,10 +29,10 @@ def shortfall(
 
 
 def lost_depth_m(
-    coefficient_wm2k: ArrayLike,
-    duration_s: ArrayLike,
-    conductivity_wmk: ArrayLike,
-    diffusivity_m2s: ArrayLike,
+    coefficient_wm2k: Numbers,
+    duration_s: Numbers,
+    conductivity_wmk: Numbers,
+    diffusivity_m2s: Numbers,
 ) -> Floats:
     """Depth [m] of mix whose whole excess heat has left through a face in ``duration_s``.
 
@@ -48,11 +47,11 @@ def lost_depth_m(
 
 
 def lost_within_m(
-    depth_m: ArrayLike,
-    coefficient_wm2k: ArrayLike,
-    duration_s: ArrayLike,
-    conductivity_wmk: ArrayLike,
-    diffusivity_m2s: ArrayLike,
+    depth_m: Numbers,
+    coefficient_wm2k: Numbers,
+    duration_s: Numbers,
+    conductivity_wmk: Numbers,
+    diffusivity_m2s: Numbers,
 ) -> Floats:
     """Part [m] of ``lost_depth_m`` that comes from the first ``depth_m`` under the face."""
     given = coefficient_wm2k, duration_s, conductivity_wmk, diffusivity_m2s
@@ -64,12 +63,12 @@ def lost_within_m(
 
 
 def lost_depth_two_m(
-    first_wm2k: ArrayLike,
-    first_s: ArrayLike,
-    second_wm2k: ArrayLike,
-    second_s: ArrayLike,
-    conductivity_wmk: ArrayLike,
-    diffusivity_m2s: ArrayLike,
+    first_wm2k: Numbers,
+    first_s: Numbers,
+    second_wm2k: Numbers,
+    second_s: Numbers,
+    conductivity_wmk: Numbers,
+    diffusivity_m2s: Numbers,
 ) -> Floats:
     """Depth [m] lost in two spells with different coefficients, such as driving and standing.
 
@@ -96,10 +95,10 @@ _PLACES, _WEIGHTS = _HALF**2, _RAW_WEIGHTS * _HALF
 
 
 def _spread_ratio(
-    coefficient_wm2k: ArrayLike,
-    duration_s: ArrayLike,
-    conductivity_wmk: ArrayLike,
-    diffusivity_m2s: ArrayLike,
+    coefficient_wm2k: Numbers,
+    duration_s: Numbers,
+    conductivity_wmk: Numbers,
+    diffusivity_m2s: Numbers,
 ) -> tuple[Floats, Floats]:
     duration = np.asarray(duration_s, float)
     spread = np.sqrt(np.asarray(diffusivity_m2s, float) * duration)

@@ -5,12 +5,10 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 import numpy as np
-from numpy.typing import ArrayLike, NDArray
 
 from advisor.errors import FaultyInput
-from advisor.heat.materials import WATER_HEAT_JKGK
-
-Floats = NDArray[np.float64]
+from advisor.heat.arrays import Floats, Numbers
+from advisor.heat.materials import WATER_HEAT_JKGK, MixThermal
 
 ICE_LATENT_JKG = 3.34e5  # melting; common tables, from memory
 ICE_HEAT_JKGK = 2100.0  # common tables, from memory
@@ -23,40 +21,48 @@ class BaseThermal:
     ``latent_jm3`` is the heat that melts the ice of a frozen base, else 0.
     """
 
-    conductivity_wmk: ArrayLike
-    density_kgm3: ArrayLike
-    specific_heat_jkgk: ArrayLike
-    latent_jm3: ArrayLike = 0.0
+    conductivity_wmk: Numbers
+    density_kgm3: Numbers
+    specific_heat_jkgk: Numbers
+    latent_jm3: Numbers = 0.0
 
     @property
     def capacity_jm3k(self) -> Floats:
         """Heat capacity of the volume [J/m3K]."""
-        return np.asarray(self.density_kgm3, float) * np.asarray(self.specific_heat_jkgk, float)
+        return np.asarray(np.multiply(self.density_kgm3, self.specific_heat_jkgk))
 
     @property
     def diffusivity_m2s(self) -> Floats:
         """Thermal diffusivity [m2/s]."""
-        return np.asarray(self.conductivity_wmk, float) / self.capacity_jm3k
+        return np.asarray(self.conductivity_wmk / self.capacity_jm3k)
 
 
 def granular_base(
-    dry_density_kgm3: ArrayLike,
-    water_of_dry_mass: ArrayLike,
+    dry_density_kgm3: Numbers,
+    water_of_dry_mass: Numbers,
     *,
     frozen: bool = False,
-    quartz_of_stone: ArrayLike = 0.4,
-    stone_density_kgm3: ArrayLike = 2700.0,
+    quartz_of_stone: Numbers = 0.4,
+    stone_density_kgm3: Numbers = 2700.0,
     crushed: bool = True,
 ) -> BaseThermal:
-    """Unbound stone with ``water_of_dry_mass`` [1] of water or ice in its pores.
+    """Unbound stone with water or ice in its pores, as a base.
 
-    Johansen 1975 (structure and constants as in an open land-surface code; exponents and dry
-    conductivity from memory): k = Ke k_sat + (1 - Ke) k_dry, Ke = 1 + log10(Sr) moist and Sr
-    frozen, k_sat a geometric mean of stone (7.7 W/mK for ``quartz_of_stone``, 2.0 for the rest)
-    and water (0.57) or ice (2.29). ``crushed`` lifts the dry value to at least 0.5 W/mK, as the
-    formula for it under-reads crushed rock. Capacities: stone 800, water 4186, ice 2100 J/kgK.
+    Args:
+        dry_density_kgm3: mass of dry stone per volume, (...) [kg/m3].
+        water_of_dry_mass: water or ice over dry stone, (...) [1].
+        frozen: whether the water is ice; its melting is then part of the base.
+        quartz_of_stone: share of quartz in the stone, (...) [1].
+        stone_density_kgm3: density of the grains, (...) [kg/m3].
+        crushed: lifts the dry conductivity to at least 0.5 W/mK, as the formula for it under-reads
+            crushed rock (from memory).
 
     Raises FaultyInput where the water does not fit the pores.
+    Validity: saturation 0.1 to 1; conductivity within about 25 %.
+    Source: Johansen 1975, structure and constants as in an open land-surface code, exponents and
+    dry conductivity from memory: k = Ke k_sat + (1 - Ke) k_dry, Ke = 1 + log10(Sr), or Sr frozen;
+    k_sat is the geometric mean of stone (7.7 W/mK for quartz, 2.0 for the rest) and water (0.57) or
+    ice (2.29). Heat capacities of stone 800, water 4186, ice 2100 J/kgK, from memory.
     """
     dry = np.asarray(dry_density_kgm3, float)
     water = np.asarray(water_of_dry_mass, float)
@@ -94,16 +100,22 @@ def granular_base(
 
 
 def contact_temperature_c(
-    upper: object, upper_c: ArrayLike, lower: object, lower_c: ArrayLike
+    upper: MixThermal | BaseThermal,
+    upper_c: Numbers,
+    lower: MixThermal | BaseThermal,
+    lower_c: Numbers,
 ) -> Floats:
     """Temperature [C] that two thick bodies take at once where they touch, perfectly.
 
-    Weighted by effusivity sqrt(k rho c) (Carslaw and Jaeger 1959). ``upper`` and ``lower`` are
-    MixThermal or BaseThermal.
+    Args:
+        upper: the body on top.
+        upper_c: its temperature, (...) [C].
+        lower: the body below.
+        lower_c: its temperature, (...) [C].
+
+    Source: weights by effusivity sqrt(k rho c), Carslaw and Jaeger 1959 (from memory).
     """
-    weights = [
-        np.sqrt(body.capacity_jm3k * np.asarray(body.conductivity_wmk, float))  # type: ignore[attr-defined]
-        for body in (upper, lower)
-    ]
+    above = np.sqrt(upper.capacity_jm3k * upper.conductivity_wmk)
+    below = np.sqrt(lower.capacity_jm3k * lower.conductivity_wmk)
     hot, cold = np.asarray(upper_c, float), np.asarray(lower_c, float)
-    return np.asarray((weights[0] * hot + weights[1] * cold) / (weights[0] + weights[1]))
+    return np.asarray((above * hot + below * cold) / (above + below))

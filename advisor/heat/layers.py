@@ -7,9 +7,8 @@ from dataclasses import dataclass, fields
 from typing import Literal
 
 import numpy as np
-from numpy.typing import ArrayLike, NDArray
 
-Floats = NDArray[np.float64]
+from advisor.heat.arrays import Floats, Numbers
 
 
 @dataclass(frozen=True)
@@ -24,20 +23,20 @@ class Layer:
     are thin: at both faces, or at the top only.
     """
 
-    thickness_m: ArrayLike
-    conductivity_wmk: ArrayLike
-    capacity_jm3k: ArrayLike
-    start_c: ArrayLike
-    deep_c: ArrayLike | None = None
-    fade_m: ArrayLike = 0.12
-    contact_m2kw: ArrayLike = 0.0
-    capacity_slope_per_k: ArrayLike = 0.0
-    capacity_at_c: ArrayLike = 0.0
-    latent_jm3: ArrayLike = 0.0
+    thickness_m: Numbers
+    conductivity_wmk: Numbers
+    capacity_jm3k: Numbers
+    start_c: Numbers
+    deep_c: Numbers | None = None
+    fade_m: Numbers = 0.12
+    contact_m2kw: Numbers = 0.0
+    capacity_slope_per_k: Numbers = 0.0
+    capacity_at_c: Numbers = 0.0
+    latent_jm3: Numbers = 0.0
     cells: int = 8
     spacing: Literal["both faces", "top"] = "both faces"
 
-    def numbers(self) -> dict[str, ArrayLike]:
+    def numbers(self) -> dict[str, Numbers]:
         """The numbers of the layer that broadcast over cases, by name."""
         own = {one.name: getattr(self, one.name) for one in fields(self)}
         return {
@@ -46,7 +45,7 @@ class Layer:
             if name not in ("cells", "spacing") and value is not None
         }
 
-    def part(self, some: Callable[[ArrayLike], Floats]) -> Layer:
+    def part(self, some: Callable[[Numbers], Floats]) -> Layer:
         """The layer with each number replaced by what ``some`` makes of it."""
         numbers = {name: some(value) for name, value in self.numbers().items()}
         return Layer(**numbers, cells=self.cells, spacing=self.spacing)

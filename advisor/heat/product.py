@@ -11,13 +11,11 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 
 import numpy as np
-from numpy.typing import ArrayLike, NDArray
 from scipy.special import erfcx
 
+from advisor.heat.arrays import Floats, Numbers
 from advisor.heat.crust import lost_depth_m
 from advisor.heat.materials import MixThermal
-
-Floats = NDArray[np.float64]
 
 
 @dataclass(frozen=True)
@@ -28,12 +26,12 @@ class Span:
     then sealed and ``length_m`` is the radius.
     """
 
-    length_m: ArrayLike
-    first_wm2k: ArrayLike
-    second_wm2k: ArrayLike = 0.0
+    length_m: Numbers
+    first_wm2k: Numbers
+    second_wm2k: Numbers = 0.0
     curvature: int = 0
 
-    def retained(self, duration_s: ArrayLike, mix: MixThermal) -> Floats:
+    def retained(self, duration_s: Numbers, mix: MixThermal) -> Floats:
         """Share [1] of the excess over the surroundings that the mean still has."""
         body = np.asarray(mix.conductivity_wmk, float), mix.diffusivity_m2s
         length = np.asarray(self.length_m, float)
@@ -50,7 +48,7 @@ class Span:
         return np.asarray(np.clip(1.0 - lost, 0.0, 1.0))
 
 
-def start_share(spans: tuple[Span, ...], duration_s: ArrayLike, mix: MixThermal) -> Floats:
+def start_share(spans: tuple[Span, ...], duration_s: Numbers, mix: MixThermal) -> Floats:
     """Share [1] of the excess over one surroundings that the mean of the block still has."""
     share = np.ones(())
     for span in spans:
@@ -64,7 +62,7 @@ _PLACES, _WEIGHTS = (_RAW + 1.0) / 2.0, _RAW_WEIGHTS / 2.0
 
 
 def face_share(
-    spans: tuple[Span, ...], at: int, first: bool, duration_s: ArrayLike, mix: MixThermal
+    spans: tuple[Span, ...], at: int, first: bool, duration_s: Numbers, mix: MixThermal
 ) -> Floats:
     """Share [1] of the surroundings of one face in the mean of the block.
 
@@ -87,15 +85,20 @@ def face_share(
 
 
 def mean_temperature_c(
-    start_c: ArrayLike,
-    air_c: ArrayLike,
-    retained: ArrayLike,
-    other_faces: Mapping[str, tuple[ArrayLike, ArrayLike]] | None = None,
+    start_c: Numbers,
+    air_c: Numbers,
+    retained: Numbers,
+    other_faces: Mapping[str, tuple[Numbers, Numbers]] | None = None,
 ) -> Floats:
     """Mean temperature [C] of a block from its shares.
 
-    ``retained`` is the start share; ``other_faces`` maps the name of a face that does not see
-    the air to its share and the temperature [C] it sees.
+    Args:
+        start_c: temperature at the start, (...) [C].
+        air_c: temperature of the air, (...) [C].
+        retained: share of the excess over the air that is kept, (...) [1].
+        other_faces: share [1] and temperature seen [C] of each face that does not see the air.
+
+    Source: superposition (derived).
     """
     air = np.asarray(air_c, float)
     mean = air + np.asarray(retained, float) * (np.asarray(start_c, float) - air)

@@ -5,14 +5,12 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 import numpy as np
-from numpy.typing import ArrayLike, NDArray
 from scipy.special import erfcx
 
 from advisor.errors import FaultyInput
+from advisor.heat.arrays import Floats, Numbers
 from advisor.heat.materials import MixThermal
 from advisor.heat.product import Span, face_share, start_share
-
-Floats = NDArray[np.float64]
 
 
 @dataclass(frozen=True)
@@ -25,26 +23,26 @@ class Silo:
     None leaves the cone to the air.
     """
 
-    radius_m: ArrayLike
-    fill_m: ArrayLike
-    cone_m: ArrayLike
-    wall_wm2k: ArrayLike
-    top_wm2k: ArrayLike
-    cone_wm2k: ArrayLike
-    cone_c: ArrayLike | None = None
+    radius_m: Numbers
+    fill_m: Numbers
+    cone_m: Numbers
+    wall_wm2k: Numbers
+    top_wm2k: Numbers
+    cone_wm2k: Numbers
+    cone_c: Numbers | None = None
 
     @classmethod
     def holding(
         cls,
-        mass_kg: ArrayLike,
-        radius_m: ArrayLike,
-        cone_m: ArrayLike,
-        density_kgm3: ArrayLike,
+        mass_kg: Numbers,
+        radius_m: Numbers,
+        cone_m: Numbers,
+        density_kgm3: Numbers,
         *,
-        wall_wm2k: ArrayLike,
-        top_wm2k: ArrayLike,
-        cone_wm2k: ArrayLike,
-        cone_c: ArrayLike | None = None,
+        wall_wm2k: Numbers,
+        top_wm2k: Numbers,
+        cone_wm2k: Numbers,
+        cone_c: Numbers | None = None,
     ) -> Silo:
         """The silo filled with ``mass_kg`` of loose mix; a fifth of a metre of barrel at least."""
         radius, cone = np.asarray(radius_m, float), np.asarray(cone_m, float)
@@ -75,31 +73,51 @@ class StoredMix:
     wall_c: Floats
 
 
-def retained_in_silo(hold_s: ArrayLike, silo: Silo, mix: MixThermal) -> Floats:
-    """Share [1] of its excess over the air that the mean of the barrel keeps over ``hold_s``.
+def retained_in_silo(hold_s: Numbers, silo: Silo, mix: MixThermal) -> Floats:
+    """Share [1] of its excess over the air that the mean of the barrel keeps.
 
     Barrel as a cylinder between its top and its cone, all towards the air; a heated cone adds to
-    it, see ``stored_mix``. Within 0.1 K of the Bessel series for two days of an ordinary silo.
+    it.
+
+    Args:
+        hold_s: time in the silo, (...) [s].
+        silo: the silo and its filling.
+        mix: the loose mix.
 
     Raises FaultyInput for a negative time.
+    Validity: within 0.1 K of the Bessel series for two days in an ordinary silo. No draught through
+    open hatches, which can lose more than an insulated wall (from memory).
     """
     _refuse_negative(hold_s)
     return start_share(_spans(silo), hold_s, mix)
 
 
-def cone_share(hold_s: ArrayLike, silo: Silo, mix: MixThermal) -> Floats:
-    """Share [1] of the cone's surroundings in the mean of the barrel, for a heated cone."""
+def cone_share(hold_s: Numbers, silo: Silo, mix: MixThermal) -> Floats:
+    """Share [1] of the cone's surroundings in the mean of the barrel, for a heated cone.
+
+    Args:
+        hold_s: time in the silo, (...) [s].
+        silo: the silo and its filling.
+        mix: the loose mix.
+    """
     return face_share(_spans(silo), 1, False, hold_s, mix)
 
 
 def stored_mix(
-    hold_s: ArrayLike, silo: Silo, mix: MixThermal, start_c: ArrayLike, air_c: ArrayLike
+    hold_s: Numbers, silo: Silo, mix: MixThermal, start_c: Numbers, air_c: Numbers
 ) -> StoredMix:
-    """Temperatures of mix stored at ``start_c`` for ``hold_s`` [s] in air at ``air_c``.
+    """Temperatures [C] of mix after a hold: all of it, the first out of the cone, the wall.
 
-    The mean is of all mix, cone included. The first out is the mix of the cone, with as much face
-    for its volume as a ball (derived); it comes out first and coldest. The wall is the crust of
-    the barrel, which comes last where the flow is a funnel (common practice).
+    The cone comes out first and coldest; it has as much face for its volume as a ball (derived).
+    The wall is the crust of the barrel, which comes last where the flow is a funnel (common
+    practice).
+
+    Args:
+        hold_s: time in the silo, (...) [s].
+        silo: the silo and its filling.
+        mix: the loose mix.
+        start_c: temperature as stored, (...) [C].
+        air_c: mean air temperature of the hold, (...) [C].
 
     Raises FaultyInput for a negative time.
     """
@@ -124,22 +142,29 @@ def stored_mix(
 
 
 def hold_left_s(
-    limit_c: ArrayLike,
+    limit_c: Numbers,
     silo: Silo,
     mix: MixThermal,
-    start_c: ArrayLike,
-    air_c: ArrayLike,
+    start_c: Numbers,
+    air_c: Numbers,
     *,
     longest_s: float = 72 * 3600.0,
 ) -> Floats:
-    """Time [s] until the first mix out of the cone is down to ``limit_c``.
+    """Time [s] until the first mix out of the cone is down to a limit; infinite where it is not.
 
-    At most ``longest_s``, and infinite where it is still warmer then. A rule on hours in the silo
-    is a rule, not part of this model.
+    A rule on hours in the silo is a rule and no part of this model.
+
+    Args:
+        limit_c: lowest temperature allowed, (...) [C].
+        silo: the silo and its filling.
+        mix: the loose mix.
+        start_c: temperature as stored, (...) [C].
+        air_c: mean air temperature of the hold, (...) [C].
+        longest_s: how far to look [s].
     """
     limit = np.asarray(limit_c, float)
 
-    def first_out_c(hold_s: ArrayLike) -> Floats:
+    def first_out_c(hold_s: Numbers) -> Floats:
         return stored_mix(hold_s, silo, mix, start_c, air_c).first_out_c
 
     low = np.zeros(np.broadcast_shapes(limit.shape, first_out_c(1.0).shape))
@@ -153,16 +178,21 @@ def hold_left_s(
 
 
 def wall_coefficient_wm2k(
-    thickness_m: ArrayLike,
-    conductivity_wmk: ArrayLike,
+    thickness_m: Numbers,
+    conductivity_wmk: Numbers,
     *,
-    inside_wm2k: ArrayLike = np.inf,
-    outside_wm2k: ArrayLike = 20.0,
-    bridges: ArrayLike = 0.0,
+    inside_wm2k: Numbers = np.inf,
+    outside_wm2k: Numbers = 20.0,
+    bridges: Numbers = 0.0,
 ) -> Floats:
-    """Coefficient [W/m2K] of an insulated wall, raised by ``bridges`` [1] for supports and gates.
+    """Coefficient [W/m2K] of an insulated wall, 1/(1/inside + thickness/conductivity + 1/outside).
 
-    1/(1/inside + thickness/conductivity + 1/outside); bridges add 20 to 50 % (from memory).
+    Args:
+        thickness_m: thickness of the insulation, (...) [m].
+        conductivity_wmk: its conductivity, hot, (...) [W/mK].
+        inside_wm2k: coefficient inside; none where mix touches the wall, (...) [W/m2K].
+        outside_wm2k: coefficient outside, (...) [W/m2K].
+        bridges: share added for supports, gates and ladders, 0.2 to 0.5 (from memory), (...) [1].
     """
     resistance = (
         1.0 / np.asarray(inside_wm2k, float)
@@ -179,7 +209,7 @@ def _spans(silo: Silo) -> tuple[Span, Span]:
     )
 
 
-def _refuse_negative(hold_s: ArrayLike) -> None:
+def _refuse_negative(hold_s: Numbers) -> None:
     if (np.asarray(hold_s, float) < 0).any():
         raise FaultyInput.of(
             "hold-negative", "Mix cannot be held for less than no time.", field="hold_s"

@@ -6,21 +6,19 @@ from collections.abc import Callable
 from types import MappingProxyType
 
 import numpy as np
-from numpy.typing import ArrayLike, NDArray
 
 from advisor.errors import FaultyInput
+from advisor.heat.arrays import Floats, Numbers
 from advisor.heat.surroundings import ZERO_C_IN_K
 
-Floats = NDArray[np.float64]
 
-
-def vapour_pressure_pa(dew_point_c: ArrayLike) -> Floats:
+def vapour_pressure_pa(dew_point_c: Numbers) -> Floats:
     """Vapour pressure [Pa] of air with ``dew_point_c`` (Magnus form 6.112, 17.62, 243.12)."""
     dew = np.asarray(dew_point_c, float)
     return np.asarray(611.2 * np.exp(17.62 * dew / (243.12 + dew)))
 
 
-def walton_emissivity(air_c: ArrayLike, dew_point_c: ArrayLike) -> Floats:
+def walton_emissivity(air_c: Numbers, dew_point_c: Numbers) -> Floats:
     """Clear-sky emissivity [1]: 0.787 + 0.764 ln(dew point/273), in K.
 
     Clark and Allen 1978 as printed in the EnergyPlus Engineering Reference.
@@ -29,19 +27,19 @@ def walton_emissivity(air_c: ArrayLike, dew_point_c: ArrayLike) -> Floats:
     return np.asarray(0.787 + 0.764 * np.log(dew_k / 273.0) + 0.0 * np.asarray(air_c))
 
 
-def brutsaert_emissivity(air_c: ArrayLike, dew_point_c: ArrayLike) -> Floats:
+def brutsaert_emissivity(air_c: Numbers, dew_point_c: Numbers) -> Floats:
     """Clear-sky emissivity [1]: 1.24 (e/T)^(1/7), e in hPa (Brutsaert 1975, as in open code)."""
     air_k = np.asarray(air_c, float) + ZERO_C_IN_K
     return np.asarray(1.24 * (vapour_pressure_pa(dew_point_c) / 100.0 / air_k) ** (1.0 / 7.0))
 
 
-def konzelmann_emissivity(air_c: ArrayLike, dew_point_c: ArrayLike) -> Floats:
+def konzelmann_emissivity(air_c: Numbers, dew_point_c: Numbers) -> Floats:
     """Clear-sky emissivity [1]: 0.23 + 0.443 (e/T)^(1/8), e in Pa (Konzelmann 1994, open code)."""
     air_k = np.asarray(air_c, float) + ZERO_C_IN_K
     return np.asarray(0.23 + 0.443 * (vapour_pressure_pa(dew_point_c) / air_k) ** 0.125)
 
 
-_CLEAR: MappingProxyType[str, Callable[[ArrayLike, ArrayLike], Floats]] = MappingProxyType(
+_CLEAR: MappingProxyType[str, Callable[[Numbers, Numbers], Floats]] = MappingProxyType(
     {
         "Clark-Allen": walton_emissivity,
         "Brutsaert": brutsaert_emissivity,
@@ -52,9 +50,9 @@ SKY_METHODS: tuple[str, ...] = tuple(_CLEAR)
 
 
 def sky_emissivity(
-    air_c: ArrayLike,
-    dew_point_c: ArrayLike,
-    cloud_of_sky: ArrayLike,
+    air_c: Numbers,
+    dew_point_c: Numbers,
+    cloud_of_sky: Numbers,
     *,
     method: str = "Clark-Allen",
 ) -> Floats:
@@ -87,13 +85,24 @@ def sky_emissivity(
 
 
 def sky_temperature_c(
-    air_c: ArrayLike,
-    dew_point_c: ArrayLike,
-    cloud_of_sky: ArrayLike,
+    air_c: Numbers,
+    dew_point_c: Numbers,
+    cloud_of_sky: Numbers,
     *,
     method: str = "Clark-Allen",
 ) -> Floats:
-    """Temperature [C] of a black sky that radiates as the real one: emissivity^0.25 times air."""
+    """Temperature [C] of a black sky that radiates as the real one.
+
+    Args:
+        air_c: air temperature, (...) [C].
+        dew_point_c: dew point, (...) [C].
+        cloud_of_sky: share of the sky under cloud, (...) [1].
+        method: one of ``SKY_METHODS`` for the clear sky.
+
+    Raises FaultyInput for an unknown name and for a dew point above the air.
+    Validity: the methods spread by 10 K in dry cold air, which moves a cooling time by 1 %.
+    Source: emissivity^0.25 times air; emissivity beside ``sky_emissivity``.
+    """
     emissivity = sky_emissivity(air_c, dew_point_c, cloud_of_sky, method=method)
     air_k = np.asarray(air_c, float) + ZERO_C_IN_K
     return np.asarray(emissivity**0.25 * air_k - ZERO_C_IN_K)

@@ -3,13 +3,11 @@
 from __future__ import annotations
 
 import numpy as np
-from numpy.typing import NDArray
 
+from advisor.heat.arrays import Floats, Numbers
 from advisor.heat.layers import Cells
 from advisor.heat.storage import Storage
 from advisor.heat.surroundings import STEFAN_BOLTZMANN_WM2K4, ZERO_C_IN_K, Face
-
-Floats = NDArray[np.float64]
 
 # TR-BDF2: the trapezium to _G of the step, then the second-order backward difference to its end.
 # With this _G both stages have the same matrix, so one elimination serves both.
@@ -27,8 +25,8 @@ class Stepper:
 
     def __init__(self, cells: Cells, top: Face, bottom: Face) -> None:
         self.top, self.bottom = top, bottom
-        self.moves = top.moves() or bottom.moves()
-        self.radiates = bool(np.any(np.asarray(top.emissivity)))
+        self.moves = bool(top.knots_s().size or bottom.knots_s().size)
+        self.radiates = bool(np.any(top.at(0.0).emissivity))
         self.storage = Storage(cells)
         self.temperature_c = cells.start_c.copy()
         self.left_top = np.zeros_like(cells.to_top)
@@ -70,7 +68,8 @@ class Stepper:
         known += self.into_wm2
         known[0] -= begins_top
         known[-1] -= begins_bottom
-        self._set_faces(start_s + _G * length, just_before=True)
+        if self.moves:
+            self._set_faces(start_s + _G * length, just_before=True)
         middle, passed_top, passed_bottom = self._stage(known, tau, first=True)
         self.left_top += tau * _SHARE * (passed_top + begins_top)
         self.left_bottom += tau * _SHARE * (passed_bottom + begins_bottom)
@@ -80,7 +79,8 @@ class Stepper:
         middle -= old
         middle /= tau
         known = middle
-        self._set_faces(end_s, just_before=True)
+        if self.moves:
+            self._set_faces(end_s, just_before=True)
         new, passed_top, passed_bottom = self._stage(known, tau, first=False)
         self.left_top += tau * passed_top
         self.left_bottom += tau * passed_bottom
@@ -173,18 +173,13 @@ class Stepper:
             (self.half_bottom * self.temperature_c[-1] + given) / (self.half_bottom + outside)
         )
 
-    def _set_faces(self, time_s: Floats | float, just_before: bool) -> None:
+    def _set_faces(self, time_s: Numbers, just_before: bool) -> None:
         """Take both faces as they are at ``time_s``."""
-        if self.moves:
-            top, bottom = self.top.at(time_s, just_before), self.bottom.at(time_s, just_before)
-        elif hasattr(self, "_top"):
-            return
-        else:
-            top, bottom = self.top, self.bottom
-        self._top, self._bottom = top, bottom
-        self._grey = np.asarray(top.emissivity) * STEFAN_BOLTZMANN_WM2K4
-        sky_k = np.asarray(top.sky_c) + ZERO_C_IN_K
-        self._given_top = top.coefficient_wm2k * top.air_c + top.gain_wm2 + self._grey * sky_k**4
+        self._top = top = self.top.at(time_s, just_before)
+        self._bottom = bottom = self.bottom.at(time_s, just_before)
+        self._grey = top.emissivity * STEFAN_BOLTZMANN_WM2K4
+        radiated = self._grey * (top.sky_c + ZERO_C_IN_K) ** 4
+        self._given_top = top.coefficient_wm2k * top.air_c + top.gain_wm2 + radiated
         outside = bottom.coefficient_wm2k
         given = outside * bottom.air_c + bottom.gain_wm2
         self._source = self.half_bottom * given / (self.half_bottom + outside)

@@ -3,11 +3,9 @@
 from __future__ import annotations
 
 import numpy as np
-from numpy.typing import NDArray
 
+from advisor.heat.arrays import Floats
 from advisor.heat.layers import Cells
-
-Floats = NDArray[np.float64]
 
 THAW_FROM_C, THAW_TO_C = -1.0, 0.0  # the ice of a frozen layer melts over this kelvin
 

@@ -5,9 +5,8 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 import numpy as np
-from numpy.typing import ArrayLike, NDArray
 
-Floats = NDArray[np.float64]
+from advisor.heat.arrays import Floats, Numbers
 
 STEFAN_BOLTZMANN_WM2K4 = 5.670374419e-8  # CODATA 2018, exact since the SI of 2019
 ZERO_C_IN_K = 273.15
@@ -32,11 +31,11 @@ class Series:
         object.__setattr__(self, "times_s", times)
         object.__setattr__(self, "values", values)
 
-    def at(self, time_s: ArrayLike, just_before: bool = False) -> Floats:
+    def at(self, time_s: Numbers, just_before: bool = False) -> Floats:
         """Value at ``time_s``, scalar or (cases,); at a jump the later one or the one before."""
         time = np.asarray(time_s, float)
-        side = "left" if just_before else "right"
-        after = np.clip(np.searchsorted(self.times_s, time, side), 1, len(self.times_s) - 1)
+        passed = np.searchsorted(self.times_s, time, side="left" if just_before else "right")
+        after = np.clip(passed, 1, len(self.times_s) - 1)
         start, end = self.times_s[after - 1], self.times_s[after]
         width = np.where(end > start, end - start, 1.0)
         part = np.clip((time - start) / width, 0.0, 1.0)
@@ -48,11 +47,11 @@ class Series:
         found: Floats = low + part * (high - low)
         return found
 
-    def scaled(self, factor: ArrayLike) -> Series:
+    def scaled(self, factor: Numbers) -> Series:
         """The series times ``factor``, a number or one for each case."""
         return Series(self.times_s, _rows(self.values, factor) * np.asarray(factor, float))
 
-    def plus(self, amount: ArrayLike) -> Series:
+    def plus(self, amount: Numbers) -> Series:
         """The series plus ``amount``, a number or one for each case."""
         return Series(self.times_s, _rows(self.values, amount) + np.asarray(amount, float))
 
@@ -61,12 +60,23 @@ class Series:
         return self if self.values.ndim == 1 else Series(self.times_s, self.values[:, cases])
 
 
-def _rows(values: Floats, other: ArrayLike) -> Floats:
+def _rows(values: Floats, other: Numbers) -> Floats:
     """``values`` (m,) as a column where ``other`` has cases."""
     return values[:, None] if values.ndim == 1 and np.ndim(other) else values
 
 
-Moving = ArrayLike | Series
+Moving = Numbers | Series
+
+
+@dataclass(frozen=True)
+class Still:
+    """A face at one moment; fields as of ``Face``, nothing moving."""
+
+    coefficient_wm2k: Floats
+    air_c: Floats
+    emissivity: Floats
+    sky_c: Floats
+    gain_wm2: Floats
 
 
 @dataclass(frozen=True)
@@ -80,41 +90,43 @@ class Face:
 
     coefficient_wm2k: Moving
     air_c: Moving
-    emissivity: ArrayLike = 0.0
+    emissivity: Moving = 0.0
     sky_c: Moving = 0.0
     gain_wm2: Moving = 0.0
 
-    def moves(self) -> bool:
-        """True where anything about the face moves in time."""
-        return bool(self.knots_s().size)
-
     def knots_s(self) -> Floats:
-        """Every time [s] at which a line bends or jumps."""
+        """Every time [s] at which a line bends or jumps; none where nothing moves."""
         moving = [one.times_s for one in self._fields() if isinstance(one, Series)]
         return np.unique(np.concatenate(moving)) if moving else np.empty(0)
 
     def shapes(self) -> list[tuple[int, ...]]:
         """Shapes over cases of everything the face holds."""
-        return [
-            one.values.shape[1:] if isinstance(one, Series) else np.shape(one)
-            for one in self._fields()
-        ]
+        return [shape_of(one) for one in self._fields()]
 
     def part(self, cases: slice, count: int) -> Face:
         """The face of some of the ``count`` cases."""
         return Face(*(_part(one, cases, count) for one in self._fields()))
 
-    def at(self, time_s: ArrayLike, just_before: bool = False) -> Face:
-        """The face as it is at ``time_s``, nothing moving."""
-        return Face(
-            *(
-                one.at(time_s, just_before) if isinstance(one, Series) else one
-                for one in self._fields()
-            )
-        )
+    def at(self, time_s: Numbers, just_before: bool = False) -> Still:
+        """The face as it is at ``time_s``; at a jump the later one or the one before."""
+        return Still(*(value_of(one, time_s, just_before) for one in self._fields()))
 
-    def _fields(self) -> tuple[Moving, Moving, ArrayLike, Moving, Moving]:
+    def _fields(self) -> tuple[Moving, ...]:
         return self.coefficient_wm2k, self.air_c, self.emissivity, self.sky_c, self.gain_wm2
+
+
+def value_of(value: Moving, time_s: Numbers, just_before: bool = False) -> Floats:
+    """What ``value`` is at ``time_s``, in its own unit."""
+    if isinstance(value, Series):
+        return value.at(time_s, just_before)
+    return np.asarray(value, float)
+
+
+def shape_of(value: Moving | None) -> tuple[int, ...]:
+    """Shape over cases of ``value``; that of a number where there is none."""
+    if value is None:
+        return ()
+    return value.values.shape[1:] if isinstance(value, Series) else np.shape(value)
 
 
 def _part(field: Moving, cases: slice, count: int) -> Moving:
@@ -124,19 +136,14 @@ def _part(field: Moving, cases: slice, count: int) -> Moving:
     return values if values.ndim == 0 else np.broadcast_to(values, (count,))[cases]
 
 
-def radiation_wm2(emissivity: ArrayLike, surface_c: ArrayLike, sky_c: ArrayLike) -> Floats:
-    """Net long-wave loss [W/m2] of a surface to its sky or surroundings; temperatures [C]."""
-    surface_k = np.asarray(surface_c, float) + ZERO_C_IN_K
-    sky_k = np.asarray(sky_c, float) + ZERO_C_IN_K
-    loss: Floats = (
-        np.asarray(emissivity, float) * STEFAN_BOLTZMANN_WM2K4 * (surface_k**4 - sky_k**4)
-    )
-    return loss
+def absorbed_wm2(sun_wm2: Moving, absorptivity: Numbers) -> Moving:
+    """Share ``absorptivity`` [1] of the sun that a face takes [W/m2], moving as the sun does."""
+    if isinstance(sun_wm2, Series):
+        return sun_wm2.scaled(absorptivity)
+    return np.asarray(np.multiply(sun_wm2, absorptivity))
 
 
-def radiation_coefficient_wm2k(
-    emissivity: ArrayLike, surface_c: ArrayLike, sky_c: ArrayLike
-) -> Floats:
+def radiation_coefficient_wm2k(emissivity: Numbers, surface_c: Numbers, sky_c: Numbers) -> Floats:
     """Coefficient [W/m2K] which times surface minus sky [C] gives the net long-wave loss."""
     surface_k = np.asarray(surface_c, float) + ZERO_C_IN_K
     sky_k = np.asarray(sky_c, float) + ZERO_C_IN_K

@@ -3,29 +3,35 @@
 from __future__ import annotations
 
 import numpy as np
-from numpy.typing import ArrayLike, NDArray
 
 from advisor.errors import FaultyInput
-
-Floats = NDArray[np.float64]
+from advisor.heat.arrays import Floats, Numbers
 
 
 def transfer_drop_k(
-    mix_c: ArrayLike,
-    air_c: ArrayLike,
-    rate_kgs: ArrayLike,
-    length_m: ArrayLike,
-    girth_m: ArrayLike,
-    coefficient_wm2k: ArrayLike,
-    specific_heat_jkgk: ArrayLike,
+    mix_c: Numbers,
+    air_c: Numbers,
+    rate_kgs: Numbers,
+    length_m: Numbers,
+    girth_m: Numbers,
+    coefficient_wm2k: Numbers,
+    specific_heat_jkgk: Numbers,
 ) -> Floats:
-    """Drop [K] of mix that enters a conveyor at ``mix_c`` [C], along its length.
+    """Drop [K] of mix along the conveyor from the drum to the silo.
 
-    Excess times 1 - exp(-U A/(m c)) (plug flow; derived). ``rate_kgs`` of mix, conveyor of
-    ``length_m`` and ``girth_m`` around, ``coefficient_wm2k`` to the air. Warm conveyor: a cold
-    chain takes heat from the first 10 to 20 t besides (from memory).
+    Args:
+        mix_c: temperature where it enters, (...) [C].
+        air_c: air temperature, (...) [C].
+        rate_kgs: rate of mix, (...) [kg/s].
+        length_m: length of the conveyor, (...) [m].
+        girth_m: its casing around, (...) [m].
+        coefficient_wm2k: through the casing, (...) [W/m2K].
+        specific_heat_jkgk: of the mix, (...) [J/kgK].
 
     Raises FaultyInput where the rate is not above 0.
+    Validity: a warm conveyor; a cold chain takes heat from the first 10 to 20 t besides (from
+    memory).
+    Source: plug flow, excess times 1 - exp(-U A/(m c)) (derived).
     """
     rate = np.asarray(rate_kgs, float)
     if (rate <= 0).any():
