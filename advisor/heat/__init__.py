@@ -5,7 +5,8 @@ from advisor.heat.convection import CONVECTION_METHODS, mat_convection_wm2k
 from advisor.heat.ground import BaseThermal, contact_temperature_c, granular_base
 from advisor.heat.laydown import laydown_needed_c
 from advisor.heat.layers import Layer
-from advisor.heat.mat import LONGEST_S, Criterion, Mat, cool_mat, rolling_time_s
+from advisor.heat.mat import LONGEST_S, Mat, cool_mat, rolling_time_s
+from advisor.heat.mat import Criterion as Criterion
 from advisor.heat.materials import (
     MixThermal,
     aggregate_heat_jkgk,
@@ -64,7 +65,6 @@ __all__ = [
     "Box",
     "ColdBody",
     "Conduction",
-    "Criterion",
     "Face",
     "Faces",
     "Layer",
