@@ -55,7 +55,7 @@ def pavement_mixed_wm2k(wind_ms: Numbers, surface_delta_k: Numbers, air_c: Numbe
 def rough_forced_wm2k(wind_ms: Numbers, surface_delta_k: Numbers) -> Floats:
     """Coefficient [W/m2K] of a medium rough horizontal face, natural and forced combined.
 
-    hn + R (sqrt(hn^2 + (3.26 V^0.89)^2) - hn), R 1.52 (MoWiTT/DOE-2 form, EnergyPlus Engineering
+    hn + R (sqrt(hn^2 + (3.26 V^0.89)^2) - hn), R 1.52 (EnergyPlus Engineering
     Reference).
     """
     natural = natural_upward_wm2k(surface_delta_k)

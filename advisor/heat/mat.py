@@ -20,6 +20,7 @@ Criterion = Literal["mean", "mid"]
 
 LONGEST_S = 6 * 3600.0  # cooling that takes longer than this counts as not reached
 _STEPS = 40
+_CELLS = 10, 8  # of mat and base, on the coarse grid
 _REACH = 3.5  # depth of base taken, in spreads sqrt(diffusivity * time); 2.5 would do
 
 
@@ -48,7 +49,14 @@ class Mat:
     contact_m2kw: Numbers = 0.0
 
 
-def cool_mat(mat: Mat, laydown_c: Numbers, times_s: Numbers, *, grids: int = 2) -> Conduction:
+def cool_mat(
+    mat: Mat,
+    laydown_c: Numbers,
+    times_s: Numbers,
+    *,
+    grids: int = 2,
+    cells: tuple[int, int] = _CELLS,
+) -> Conduction:
     """Temperatures [C] of a mat and its base after laying.
 
     The first layer of the answer is the mat, the second its base; its depths are the middle and the
@@ -59,6 +67,7 @@ def cool_mat(mat: Mat, laydown_c: Numbers, times_s: Numbers, *, grids: int = 2) 
         laydown_c: temperature behind the screed, (cases,) [C].
         times_s: rising from 0, which sets the steps, (times,) or (times, cases) [s].
         grids: 2 for full accuracy; 1 is quick and within about 0.3 K.
+        cells: how many, of mat and base, on the coarse grid.
 
     Raises FaultyInput for a lift, a material or a temperature that cannot be, all at once.
     Validity: further from an edge or joint than the mat is thick; no water from rollers. A steel
@@ -72,7 +81,7 @@ def cool_mat(mat: Mat, laydown_c: Numbers, times_s: Numbers, *, grids: int = 2) 
     )
     reach = _REACH * np.sqrt(mat.base.diffusivity_m2s * times[-1])
     layers = (
-        Layer(lift, mat.mix.conductivity_wmk, mat.mix.capacity_jm3k, start, cells=8),
+        Layer(lift, mat.mix.conductivity_wmk, mat.mix.capacity_jm3k, start, cells=cells[0]),
         Layer(
             reach,
             mat.base.conductivity_wmk,
@@ -81,7 +90,7 @@ def cool_mat(mat: Mat, laydown_c: Numbers, times_s: Numbers, *, grids: int = 2) 
             deep_c=mat.base_deep_c,
             contact_m2kw=mat.contact_m2kw,
             latent_jm3=mat.base.latent_jm3,
-            cells=10,
+            cells=cells[1],
             spacing="top",
         ),
     )
@@ -104,7 +113,7 @@ def rolling_time_s(
 
     Raises FaultyInput as ``cool_mat`` does, and for another criterion.
     """
-    _refuse_criterion(criterion)
+    refuse_criterion(criterion)
     shape = cases_of(mat, laydown_c, end_c)
     every = some_cases(mat, shape, slice(None))
     count = int(np.prod(shape))
@@ -263,7 +272,8 @@ def _rough_time_s(mat: Mat, laydown_c: Floats, end_c: Floats) -> Floats:
     return np.asarray(1.5 * root**2)
 
 
-def _refuse_criterion(criterion: str) -> None:
+def refuse_criterion(criterion: str) -> None:
+    """Raise FaultyInput where ``criterion`` names no temperature of the mat."""
     if criterion not in ("mean", "mid"):
         raise FaultyInput.of(
             "criterion-unknown",
