@@ -13,7 +13,7 @@ _DIFFERENCE = re.compile(r"(^|_)(delta|drop|rise|loss|lost|sd|difference|error|m
 
 
 def fault_of(name: str) -> str:
-    """What is wrong with the ``name`` of a parameter, a field or a function; empty if nothing."""
+    """What is wrong with the ``name`` of a parameter or a field; empty if nothing."""
     if name.endswith("_f"):
         return "Fahrenheit belongs to the edges"
     if name.endswith("_delta_c"):
@@ -26,10 +26,9 @@ def fault_of(name: str) -> str:
 
 
 def names(module: ast.Module) -> Iterator[tuple[int, str]]:
-    """Line and name of every parameter, field, constant and function of a module."""
+    """Line and name of every parameter, field and constant of a module."""
     for node in ast.walk(module):
         if isinstance(node, ast.FunctionDef):
-            yield node.lineno, node.name
             for given in ast.walk(node.args):
                 if isinstance(given, ast.arg):
                     yield given.lineno, given.arg
