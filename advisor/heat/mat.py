@@ -114,6 +114,7 @@ def rolling_time_s(
     Raises FaultyInput as ``cool_mat`` does, and for another criterion.
     """
     refuse_criterion(criterion)
+    _refuse_impossible(mat, laydown_c)
     shape = cases_of(mat, laydown_c, end_c)
     every = some_cases(mat, shape, slice(None))
     count = int(np.prod(shape))
