@@ -120,7 +120,7 @@ def in_service_viscosity_pas(
     slope: ArrayLike,
     temperature_c: ArrayLike,
     months: ArrayLike,
-    mean_air_f: ArrayLike,
+    mean_air_c: ArrayLike,
 ) -> Floats:
     """Viscosity [Pa.s] at the surface of a pavement after years, for a guess of RAP binder.
 
@@ -129,13 +129,13 @@ def in_service_viscosity_pas(
         slope: VTS after mixing and laying [1].
         temperature_c: temperature of the viscosity wanted [C].
         months: age [months].
-        mean_air_f: mean annual air temperature [F], as the model takes it.
+        mean_air_c: mean annual air temperature [C], above -17.8; the model takes Fahrenheit.
 
     Source: global ageing system, Mirza and Witczak 1995 (from memory; checked by size).
     """
     x = log_rankine(temperature_c)
     fresh = np.asarray(intercept, float) + np.asarray(slope, float) * x
-    air = np.log10(np.asarray(mean_air_f, float))
+    air = np.log10(np.asarray(mean_air_c, float) * 1.8 + 32.0)
     c = 10.0 ** (274.4946 - 193.831 * x + 33.9366 * x**2)
     d = -14.5521 + 10.47662 * x - 1.88161 * x**2
     a = -0.004166 + 1.41213 * c + c * air + d * fresh

@@ -54,16 +54,16 @@ def volume_factor(temperature_c: ArrayLike, column: Column = "A") -> Floats:
     return found
 
 
-def volume_factor_60f(temperature_f: ArrayLike) -> Floats:
+def volume_factor_60f(temperature_c: ArrayLike) -> Floats:
     """Volume correction factor [1] of ASTM D4311 column A to the base of 60 F.
 
     Args:
-        temperature_f: temperature [F].
+        temperature_c: temperature [C]; the polynomial itself takes Fahrenheit.
 
     Source: ASTM D4311 section 4.2.2, second table (looked up).
     """
     constant, first, second = _FACTORS_F_A
-    temperature = np.asarray(temperature_f, float)
+    temperature = np.asarray(temperature_c, float) * 1.8 + 32.0
     found: Floats = constant + first * temperature + second * temperature**2
     return found
 
