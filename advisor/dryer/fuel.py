@@ -9,6 +9,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass
 from functools import lru_cache
+from typing import Any
 
 import numpy as np
 from numpy.typing import ArrayLike
@@ -148,15 +149,24 @@ def combustion(fuel: Fuel) -> Combustion:
     )
 
 
-def fuel_from_moles(name: str, moles: Mapping[str, float], co2_factor_kg_j: float = 0.0) -> Fuel:
-    """The fuel made of gases; its gross heating value follows from heats of formation.
+def fuel_from_moles(
+    name: str,
+    moles: Mapping[str, float],
+    gross_j_kg: float = 0.0,
+    density_kgm3: float = 0.0,
+    co2_factor_kg_j: float = 0.0,
+) -> Fuel:
+    """The fuel made of gases, by mole shares.
 
     Args:
-        name: what the fuel is called
-        moles: mole share of each of CH4, C2H6, C3H8, C4H10 (normal butane), H2, CO, N2, CO2; sum 1
-        co2_factor_kg_j: published carbon dioxide factor [kg per J gross], 0 for none
+        name: what the fuel is called.
+        moles: mole share of each of CH4, C2H6, C3H8, C4H10 (normal butane), H2, CO, N2, CO2; they
+            sum to 1 [1].
+        gross_j_kg: gross heating value, 0 to work it out from heats of formation [J/kg].
+        density_kgm3: density of the liquid at 15 C, 0 for a gas [kg/m3].
+        co2_factor_kg_j: published carbon dioxide factor per gross heat, 0 for none [kg/J].
 
-    Source: heats of formation and of combustion from ``chemicals``.
+    Source: molar masses and heats of formation and combustion from ``chemicals``.
     """
     unknown = sorted(set(moles) - set(_GAS_CAS))
     if unknown:
@@ -171,29 +181,58 @@ def fuel_from_moles(name: str, moles: Mapping[str, float], co2_factor_kg_j: floa
         raise FaultyInput.of(
             "fuel-sum", f"The mole shares of {name} sum to {total:g}, not 1.", field=name
         )
-    from chemicals.combustion import combustion_data
     from chemicals.elements import molecular_weight, simple_formula_parser
-    from chemicals.reaction import Hfg
 
-    mass = {symbol: 0.0 for symbol in ELEMENTS.values()}
     kg = molar_masses_kg_mol()
-    gross_j = molar_kg = 0.0
+    mass = {symbol: 0.0 for symbol in ELEMENTS.values()}
+    molar_kg = 0.0
     for gas, share in moles.items():
         atoms = simple_formula_parser(gas)
         molar_kg += share * molecular_weight(atoms) / 1000.0
         for symbol, count in atoms.items():
             mass[symbol] += share * count * kg[symbol]
-        if gas not in ("N2", "CO2"):
-            gross_j -= share * combustion_data(atoms, Hf=Hfg(_GAS_CAS[gas])).HHV
     shares = {word: mass[symbol] / molar_kg for word, symbol in ELEMENTS.items()}
     return Fuel(
         name=name,
         **shares,
         inert=0.0,
-        gross_j_kg=gross_j / molar_kg,
+        gross_j_kg=gross_j_kg or _gross_j_mol(moles) / molar_kg,
+        density_kgm3=density_kgm3,
         molar_mass_kg_mol=molar_kg,
         co2_factor_kg_j=co2_factor_kg_j,
     )
+
+
+def _gross_j_mol(moles: Mapping[str, float]) -> float:
+    """Gross heat [J] of a mole of mixed gases."""
+    from chemicals.combustion import combustion_data
+    from chemicals.elements import simple_formula_parser
+    from chemicals.reaction import Hfg
+
+    # the library counts heat given off as negative; nitrogen and carbon dioxide give none
+    return -sum(
+        float(share * combustion_data(simple_formula_parser(gas), Hf=Hfg(_GAS_CAS[gas])).HHV)
+        for gas, share in moles.items()
+        if gas not in ("N2", "CO2")
+    )
+
+
+def fuel_of_row(row: Mapping[str, Any]) -> Fuel:
+    """The fuel of a row of a table of fuels, its numbers in SI.
+
+    Args:
+        row: by column: name; moles, or carbon, hydrogen, oxygen, nitrogen, sulfur and inert;
+            gross [J/kg]; density [kg/m3] and co2_factor [kg/J] where known.
+    """
+    more = {
+        "gross_j_kg": row["gross"],
+        "density_kgm3": row.get("density", 0.0),
+        "co2_factor_kg_j": row.get("co2_factor", 0.0),
+    }
+    if "moles" in row:
+        return fuel_from_moles(row["name"], row["moles"], **more)
+    shares = {word: row[word] for word in (*ELEMENTS, "inert")}
+    return Fuel(name=row["name"], **shares, **more)
 
 
 def gross_estimate_j_kg(fuel_shares: Mapping[str, float]) -> float:
