@@ -182,6 +182,13 @@ _KINDS: dict[str, dict[str, Unit]] = {
         "Btu/lb": Unit(_BTU_J / _POUND_KG),
         "Btu/ton": Unit(_BTU_J / _SHORT_TON_KG),
     },
+    "mass_per_heat": {
+        "kg/J": Unit(1.0),
+        "kg/MMBtu": Unit(1e-6 / _BTU_J),
+        "kg/GJ": Unit(1e-9),
+        "kg/kWh": Unit(1 / 3.6e6),
+    },
+    "emission_factor": {"kg/kg": Unit(1.0), "kg/t": Unit(1e-3), "lb/ton": Unit(1 / 2000)},
     "conductivity": {"W/mK": Unit(1.0), "W/(m.K)": Unit(1.0)},
     "specific_heat": {"J/kgK": Unit(1.0), "J/(kg.K)": Unit(1.0), "kJ/(kg.K)": Unit(1e3)},
     "heat_transfer": {"W/m2K": Unit(1.0), "W/(m2.K)": Unit(1.0)},

@@ -1,11 +1,20 @@
 """Dryer: heat and mass balance, burner, recycled material, stack, and what a degree costs."""
 
 from advisor.dryer.balance import HeatBalance, HeatParts, heat_balance
+from advisor.dryer.burner import (
+    BurnerAdvice,
+    FuelDeviation,
+    ProductionLimit,
+    burner_advice,
+    fuel_deviation,
+    production_limit,
+)
 from advisor.dryer.change import (
     HeatChange,
     OverheatingCost,
     Range,
     StackRise,
+    degrees_worth_k,
     heat_change,
     leakage_cost,
     moisture_cost,
@@ -19,11 +28,21 @@ from advisor.dryer.fuel import (
     dry_co2,
     dry_oxygen,
     fuel_from_moles,
+    fuel_of_row,
     gas_at_standard_m3,
     gross_estimate_j_kg,
 )
+from advisor.dryer.fumes import (
+    FumeEquation,
+    fume_growth,
+    fume_is_known,
+    fume_kg_kg,
+    oxidation_growth,
+    volatility,
+)
 from advisor.dryer.materials import (
     Aggregate,
+    aggregate_of_row,
     binder_enthalpy_j_kg,
     binder_specific_heat_j_kgk,
 )
@@ -38,37 +57,73 @@ from advisor.dryer.operation import (
     moisture_of_dry_mass,
     moisture_of_wet_mass,
 )
-from advisor.dryer.properties import air_pressure_pa, dew_point_c, humidity_ratio
+from advisor.dryer.price import gross_j_per_unit, money_per_gross_j
+from advisor.dryer.properties import (
+    air_pressure_pa,
+    dew_point_c,
+    humidity_ratio,
+    saturation_pressure_pa,
+    steam_enthalpy_j_kg,
+    water_enthalpy_j_kg,
+)
 from advisor.dryer.recycled import hot_aggregate_needed_c, most_rap_of_mix, with_rap_share
+from advisor.dryer.shell import shell_loss_w
+from advisor.dryer.stack import StackLimits, acid_dew_point_c, dioxide_share, stack_limits
+from advisor.dryer.variant import (
+    air_ratio_from_wet_oxygen,
+    at_discharge,
+    drier,
+    with_air_ratio,
+    with_fuel,
+)
 
 __all__ = [
     "Aggregate",
     "Air",
+    "BurnerAdvice",
     "Combustion",
     "Feed",
     "Filler",
     "Fraction",
     "Fuel",
+    "FuelDeviation",
+    "FumeEquation",
     "HeatBalance",
     "HeatChange",
     "HeatParts",
     "Operation",
     "OverheatingCost",
+    "ProductionLimit",
     "Range",
     "Rap",
+    "StackLimits",
     "StackRise",
+    "acid_dew_point_c",
+    "aggregate_of_row",
     "air_pressure_pa",
     "air_ratio_from_dry_oxygen",
+    "air_ratio_from_wet_oxygen",
+    "at_discharge",
     "binder_enthalpy_j_kg",
     "binder_specific_heat_j_kgk",
+    "burner_advice",
     "combined_moisture",
     "combustion",
+    "degrees_worth_k",
     "dew_point_c",
+    "dioxide_share",
+    "drier",
     "dry_co2",
     "dry_oxygen",
+    "fuel_deviation",
     "fuel_from_moles",
+    "fuel_of_row",
+    "fume_growth",
+    "fume_is_known",
+    "fume_kg_kg",
     "gas_at_standard_m3",
     "gross_estimate_j_kg",
+    "gross_j_per_unit",
     "heat_balance",
     "heat_change",
     "hot_aggregate_needed_c",
@@ -77,7 +132,18 @@ __all__ = [
     "moisture_cost",
     "moisture_of_dry_mass",
     "moisture_of_wet_mass",
+    "money_per_gross_j",
     "most_rap_of_mix",
     "overheating_cost",
+    "oxidation_growth",
+    "production_limit",
+    "saturation_pressure_pa",
+    "shell_loss_w",
+    "stack_limits",
+    "steam_enthalpy_j_kg",
+    "volatility",
+    "water_enthalpy_j_kg",
+    "with_air_ratio",
+    "with_fuel",
     "with_rap_share",
 ]

@@ -6,7 +6,7 @@ would run are compared. Overheating and moisture stay two different numbers.
 
 from __future__ import annotations
 
-from dataclasses import dataclass, fields, replace
+from dataclasses import dataclass, fields
 
 import numpy as np
 from numpy.typing import ArrayLike
@@ -14,6 +14,7 @@ from numpy.typing import ArrayLike
 from advisor.dryer.balance import HeatBalance, HeatParts, heat_balance
 from advisor.dryer.operation import Operation
 from advisor.dryer.properties import Values
+from advisor.dryer.variant import at_discharge, drier, with_air_ratio
 
 
 @dataclass(frozen=True, eq=False)
@@ -55,6 +56,11 @@ class HeatChange:
     co2_kg_kg: Values
     exhaust_m3_kg: Values
     of_gross: Values
+
+    def money_kg(self, price_j_before: ArrayLike, price_j_after: ArrayLike) -> Values:
+        """Difference in money per kg of mix, from the money per joule of gross heat of each."""
+        after = self.after.gross_j_kg * np.asarray(price_j_after, float)
+        return np.asarray(after - self.before.gross_j_kg * np.asarray(price_j_before, float))
 
 
 def heat_change(before: Operation, after: Operation) -> HeatChange:
@@ -151,11 +157,8 @@ def overheating_cost(
 
 
 def _hotter(needed: Operation, excess: Values, rise: float) -> HeatChange:
-    return heat_change(needed, replace(
-        needed,
-        discharge_c=np.asarray(needed.discharge_c, float) + excess,
-        stack_c=np.asarray(needed.stack_c, float) + rise * excess,
-    ))  # fmt: skip
+    hotter_c = np.asarray(needed.discharge_c, float) + excess
+    return heat_change(needed, at_discharge(needed, hotter_c, rise))
 
 
 def _solids_j_kg(parts: HeatParts) -> Values:
@@ -166,24 +169,30 @@ def moisture_cost(operation: Operation, drier_of_dry_mass: ArrayLike) -> HeatCha
     """Difference of the fuel heat if every virgin fraction were drier by the same amount.
 
     Args:
-        operation: the dryer as it runs
-        drier_of_dry_mass: moisture taken off each fraction, any shape; below 0 is wetter [1]
+        operation: the dryer as it runs.
+        drier_of_dry_mass: water taken off each kilogram of dry stone, any shape; below 0 is
+            wetter [1].
     """
-    off = np.asarray(drier_of_dry_mass, float)
-    feed = operation.feed
-    drier = replace(feed, fractions=tuple(
-        replace(one, moisture_of_dry_mass=np.asarray(one.moisture_of_dry_mass, float) - off)
-        for one in feed.fractions
-    ))  # fmt: skip
-    return heat_change(operation, replace(operation, feed=drier))
+    return heat_change(operation, drier(operation, drier_of_dry_mass))
 
 
 def leakage_cost(operation: Operation, air_ratio_without: ArrayLike) -> HeatChange:
     """Difference of the fuel heat if less air came in, the stack temperature held.
 
     Args:
-        operation: the dryer as it runs
-        air_ratio_without: all air over the air just needed that would remain, any shape [1]
+        operation: the dryer as it runs.
+        air_ratio_without: all air over the air just needed that would remain, any shape [1].
     """
-    tighter = replace(operation, air_ratio=air_ratio_without, burner_air_ratio=None)
-    return heat_change(operation, tighter)
+    return heat_change(operation, with_air_ratio(operation, air_ratio_without))
+
+
+def degrees_worth_k(change: HeatChange, cost: OverheatingCost) -> Range:
+    """Degrees of overheating that cost as much fuel as a change, to compare the two [K].
+
+    Args:
+        change: a change of moisture, air or anything else.
+        cost: what a degree costs at the same dryer.
+    """
+    spent = np.abs(change.gross_j_kg)
+    per_k = cost.gross_j_kg_k
+    return Range(spent / per_k.high, spent / per_k.central, spent / per_k.low)

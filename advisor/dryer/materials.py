@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
+from typing import Any
 
 import numpy as np
 from numpy.typing import ArrayLike
@@ -35,6 +37,15 @@ class Aggregate:
         t = np.asarray(temperature_c, float)
         half, third = self.slope_j_kgk2 / 2.0, self.curvature_j_kgk3 / 3.0
         return np.asarray((self.base_j_kgk + (half + third * t) * t) * t)
+
+
+def aggregate_of_row(row: Mapping[str, Any]) -> Aggregate:
+    """The aggregate of a row of a table of stone, its numbers in SI.
+
+    Args:
+        row: by column: name, base, slope and curvature.
+    """
+    return Aggregate(row["name"], row["base"], row["slope"], row["curvature"])
 
 
 def binder_specific_heat_j_kgk(
