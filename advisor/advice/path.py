@@ -23,7 +23,6 @@ from advisor.heat import (
     Silo,
     laydown_needed_c,
     mat_convection_wm2k,
-    pressure_share,
     retained_in_silo,
     retained_in_truck,
     rolling_time_s,
@@ -179,8 +178,7 @@ def draw_path(cases: Sequence[PathCase], draws: Draws, criterion: Criterion) -> 
         lift_m=lift,
         base_c=base_c,
         air_c=air,
-        coefficient_wm2k=convection
-        * mat_convection_wm2k(wind, pressure_share=_col(pressure_share(one["altitude_m"]))),
+        coefficient_wm2k=convection * mat_convection_wm2k(wind, altitude_m=_col(one["altitude_m"])),
         sun_wm2=sun,
         sky_c=sky,
         mix=laid,

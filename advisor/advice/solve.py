@@ -53,6 +53,19 @@ class Bound:
 
 
 @dataclass(frozen=True)
+class Coating:
+    """The window in which binder coats stone, at discharge; ``target_c`` [C] is its middle.
+
+    ``high_gives_way``: the upper edge is a computed preference, not somebody's limit.
+    """
+
+    low: Limit
+    target_c: float
+    high: Limit
+    high_gives_way: bool
+
+
+@dataclass(frozen=True)
 class Solution:
     """Setpoints, or the two bounds that clash; the bounds themselves for the reasons."""
 
@@ -89,7 +102,7 @@ def discharge_bounds(
 
 def solve(
     limits: Sequence[tuple[Limit, Floats | float]],
-    preferred_high: tuple[Limit, float] | None,
+    coating: Coating | None,
     legs: Mapping[Point, Leg],
     scatter_k: Floats,
     confidence: float,
@@ -97,30 +110,52 @@ def solve(
     """The lowest discharge target that keeps every low bound with ``confidence``.
 
     ``scatter_k`` [K] is a column of draws of how far the discharge lies from where it is set
-    (control and gauge). ``preferred_high`` is a computed upper edge that gives way where a firm
-    low bound, scatter included, needs more; it is then named in ``set_aside``.
+    (control and gauge). ``coating`` adds its own low bound, for which no higher target is taken
+    than its middle; its upper edge, where only preferred, gives way to a need and is then named in
+    ``set_aside``.
     """
-    lows, highs = discharge_bounds(limits, legs, confidence)
+    every = list(limits)
+    if coating:
+        every.append((coating.low, coating.low.value_c))
+        if not coating.high_gives_way:
+            every.append((coating.high, coating.high.value_c))
+    lows, highs = discharge_bounds(every, legs, confidence)
     low, high = lows[0], highs[0]
     if low.at_discharge_c > high.at_discharge_c:
         gap = low.at_discharge_c - high.at_discharge_c
         clash = Clash(low.limit, high.limit, gap)
         return Solution((), lows, highs, clash, (), False)
-    needed = np.max(np.stack([bound.draws_c for bound in lows]), axis=0)
-    target = float(quantile(needed + scatter_k, confidence))
+    target = _target_c(lows, coating, scatter_k, confidence)
     set_aside: tuple[Limit, ...] = ()
-    if preferred_high and preferred_high[1] < high.at_discharge_c:
-        limit, value = preferred_high
-        if value >= target:
-            high = Bound(limit, np.full_like(low.draws_c, value), value)
+    if coating and coating.high_gives_way and coating.high.value_c < high.at_discharge_c:
+        if coating.high.value_c >= target:
+            edge = coating.high.value_c
+            high = Bound(coating.high, np.full_like(low.draws_c, edge), edge)
         else:
-            set_aside = (limit,)
+            set_aside = (coating.high,)
     squeezed = target > high.at_discharge_c
     if squeezed:
         target = 0.5 * (low.at_discharge_c + high.at_discharge_c)
     target = max(target, low.at_discharge_c)
     points = tuple(_setpoint(point, legs, target, low, high, lows, confidence) for point in legs)
     return Solution(points, lows, highs, None, set_aside, squeezed)
+
+
+def _target_c(
+    lows: Sequence[Bound], coating: Coating | None, scatter_k: Floats, confidence: float
+) -> float:
+    """Discharge [C] from which ``confidence`` of the mix keeps every low bound."""
+
+    def with_scatter(bounds: Sequence[Bound]) -> float:
+        needed = np.max(np.stack([one.draws_c for one in bounds]), axis=0)
+        return float(quantile(needed + scatter_k, confidence))
+
+    if coating is None:
+        return with_scatter(lows)
+    others = [one for one in lows if one.limit is not coating.low]
+    coated = [one for one in lows if one.limit is coating.low]
+    aim = min(with_scatter(coated), coating.target_c)
+    return max(aim, with_scatter(others)) if others else aim
 
 
 def _setpoint(
@@ -150,5 +185,5 @@ def _setpoint(
         high_c=float(np.median(leg.at_point(high.at_discharge_c))),
         low_set_by=ahead[binding].limit,
         high_set_by=high.limit,
-        sd_k=float(np.std(needs[binding])),
+        sd_k=max(float(np.std(needs[binding])), ahead[binding].limit.sd_k),
     )

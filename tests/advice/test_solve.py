@@ -6,7 +6,7 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from advisor.advice.result import Limit
-from advisor.advice.solve import Leg, discharge_bounds, solve
+from advisor.advice.solve import Coating, Leg, discharge_bounds, solve
 from advisor.sampling import Draws, quantile
 
 COUNT = 256
@@ -76,14 +76,40 @@ def test_of_two_equal_limits_the_higher_authority_is_named():
     assert highs[0].limit.authority == "safety"
 
 
+def coating(low, target, high, gives_way=True):
+    return Coating(
+        limit("discharge", "low", low, "computed")[0],
+        target,
+        limit("discharge", "high", high, "computed")[0],
+        gives_way,
+    )
+
+
 def test_a_preferred_edge_holds_when_it_can_and_gives_way_when_it_must():
-    edge = (limit("discharge", "high", 158.0, "computed")[0], 158.0)
-    kept = solve(BASE, edge, path(), STILL, 0.95)
+    firm = [limit("discharge", "high", 170.0, "supplier")]
+    window = coating(150.0, 154.0, 158.0)
+    kept = solve(firm, window, path(), STILL, 0.95)
     assert kept.setpoints[0].high_c == 158.0
     assert kept.set_aside == ()
-    pushed = solve([*BASE, limit("delivery", "low", 152.0)], edge, path(), STILL, 0.95)
+    pushed = solve([*firm, limit("delivery", "low", 152.0)], window, path(), STILL, 0.95)
     assert pushed.setpoints[0].high_c == 170.0
-    assert pushed.set_aside == (edge[0],)
+    assert pushed.set_aside == (window.high,)
+
+
+def test_scatter_lifts_the_target_no_further_than_the_middle_of_the_coating_window():
+    firm = [limit("discharge", "high", 170.0, "supplier")]
+    scatter = Draws(COUNT).normal("control", 0.0, 3.0)
+    near = solve(firm, coating(150.0, 153.0, 158.0), path(), scatter, 0.95)
+    assert near.setpoints[0].target_c == 153.0
+    wide = solve(firm, coating(150.0, 165.0, 169.0), path(), scatter, 0.95)
+    assert wide.setpoints[0].target_c == pytest.approx(150.0 + 1.645 * 3.0, abs=0.2)
+
+
+def test_an_upper_edge_that_is_somebodys_limit_does_not_give_way():
+    window = coating(150.0, 154.0, 158.0, gives_way=False)
+    rows = [limit("discharge", "high", 170.0), limit("delivery", "low", 152.0)]
+    found = solve(rows, window, path(), STILL, 0.95)
+    assert found.clash.upper is window.high
 
 
 def test_a_window_narrower_than_the_scatter_is_said_to_be_squeezed():
