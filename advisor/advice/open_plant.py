@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from datetime import UTC, datetime
 from pathlib import Path
+from typing import TYPE_CHECKING
 
 from advisor.advice.facts import PlantFacts
 from advisor.errors import AdvisorError
@@ -11,11 +13,14 @@ from advisor.records import open_records
 from advisor.settings.folder import PlantFolder, read_plant
 from advisor.settings.moments import utc_of
 
+if TYPE_CHECKING:
+    import pandas as pd
 
-def open_plant(
-    path: str | Path, start: datetime | None = None, end: datetime | None = None
-) -> PlantFacts:
-    """All that is known of the plant at ``path``; its log from ``start`` to ``end``.
+    from advisor.logs.signals import SourceKind
+
+
+def open_plant(path: str | Path, latest_only: bool = False) -> PlantFacts:
+    """All that is known of the plant at ``path``; ``latest_only`` skips judging its whole log.
 
     Raises FaultyInput with every fault of the folder. A plant without a log or weather file opens
     all the same; advice then says what it lacks.
@@ -25,18 +30,22 @@ def open_plant(
 
     folder = read_plant(path)
     records = open_records(folder)
-    frames = {}
-    for kind in ("weather", "plant_log"):
-        try:
-            frame, _ = read_kind(folder, kind)  # type: ignore[arg-type]
-        except AdvisorError:
-            frame = None
-        frames[kind] = frame if frame is not None and len(frame) else None
-    log = frames["plant_log"]
-    if log is not None:
-        inside = (log["time"] >= start if start else True) & (log["time"] < end if end else True)
-        log = mark_faults(log[inside].reset_index(drop=True) if start or end else log)
-    return PlantFacts(folder, records, frames["weather"], log)
+    weather, log = (_frame(read_kind, folder, kind) for kind in ("weather", "plant_log"))
+    if log is not None and not latest_only:
+        log = mark_faults(log)
+    return PlantFacts(folder, records, weather, log)
+
+
+def _frame(
+    read_kind: Callable[[PlantFolder, SourceKind], tuple[pd.DataFrame, object]],
+    folder: PlantFolder,
+    kind: SourceKind,
+) -> pd.DataFrame | None:
+    try:
+        frame, _ = read_kind(folder, kind)
+    except AdvisorError:
+        return None
+    return frame if len(frame) else None
 
 
 def moment_now(folder: PlantFolder, written: str | None = None) -> datetime:

@@ -6,6 +6,7 @@ from dataclasses import dataclass
 
 import numpy as np
 import pandas as pd
+from numpy.typing import NDArray
 
 from advisor.review.result import State
 
@@ -18,6 +19,9 @@ class CauseRules:
     rate_change: float
     heat_change: float
     window_change_k: float
+
+
+_LEAST_ROWS = 10  # fewer rows before an excursion say nothing about what changed
 
 
 @dataclass(frozen=True)
@@ -34,7 +38,7 @@ def likely_cause(
     """The cause that best fits what changed at the start of rows ``start:end``.
 
     ``rows`` has time_s [s], discharge_c and window_c (the bound crossed) [C], rate_kgs [kg/s],
-    burner_load [1] and marked (readings near it that cannot be trusted).
+    burner_load [1] and over_k, missing where no mix is judged.
     """
     if state == "start-up":
         return Cause("start-up", "The plant had just started; the discharge had not settled.")
@@ -42,11 +46,15 @@ def likely_cause(
         return Cause("mix change", "The mix had just changed; the discharge had not settled.")
     time_s = rows["time_s"].to_numpy()
     since = time_s[start]
-    back = (time_s >= since - rules.look_back_s) & (time_s < since)
+    back = (time_s >= since - rules.look_back_s) & (time_s < since) & _making(rows)
     during = np.zeros(len(rows), bool)
     during[start:end] = True
-    if not back.any():
-        return Cause("not known", "The log does not reach back far enough to say.")
+    if np.count_nonzero(back) < _LEAST_ROWS:
+        return Cause(
+            "setpoint",
+            "It was so from the first minutes of this run: the discharge was set "
+            f"{'above' if side == 'hot' else 'below'} the window.",
+        )
     before, now = _means(rows[back]), _means(rows[during])
     window_shift = now["window_c"] - before["window_c"]
     toward = -1.0 if side == "hot" else 1.0
@@ -58,9 +66,7 @@ def likely_cause(
     rate_shift = _relative(now["rate_kgs"], before["rate_kgs"])
     if abs(rate_shift) > rules.rate_change:
         return Cause("rate change", f"The mix rate changed by {rate_shift:+.0%} just before.")
-    heat_shift = _relative(
-        now["burner_load"] / now["rate_kgs"], before["burner_load"] / before["rate_kgs"]
-    )
+    heat_shift = _relative(_heat_per_mass(now), _heat_per_mass(before))
     if abs(heat_shift) > rules.heat_change and (heat_shift > 0) == (side == "hot"):
         return Cause(
             "burner", f"The burner gave {heat_shift:+.0%} heat per tonne against the time before."
@@ -72,6 +78,14 @@ def likely_cause(
             "as drier stone would do.",
         )
     return Cause("not known", "Rate, burner and window did not change enough to explain it.")
+
+
+def _making(rows: pd.DataFrame) -> NDArray[np.bool_]:
+    return np.asarray(rows["over_k"].notna(), bool)
+
+
+def _heat_per_mass(means: dict[str, float]) -> float:
+    return means["burner_load"] / means["rate_kgs"] if means["rate_kgs"] > 0 else float("nan")
 
 
 def _means(rows: pd.DataFrame) -> dict[str, float]:

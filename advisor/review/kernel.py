@@ -25,7 +25,7 @@ from advisor.review.result import (
     StateShare,
     Waste,
 )
-from advisor.review.runs import outside_mask, row_durations_s, run_edges
+from advisor.review.runs import outside_runs, row_durations_s
 from advisor.review.states import CODE, STATES, StateRules, plant_states
 from advisor.review.waste import HeatPrice, excess_tk, waste_of
 
@@ -84,6 +84,10 @@ def join_timeline(rows: pd.DataFrame, timeline: pd.DataFrame, at: str = "time") 
 
 def trace_rows(log: pd.DataFrame, timeline: pd.DataFrame, rules: ReviewRules) -> pd.DataFrame:
     """The log with window, state, smoothed discharge and distance from the window at every row.
+
+    ``log`` has time (aware UTC, ascending), mix_id, discharge_c [C], rate_kgs [kg/s], burner_load
+    [1], and for each signal an optional ``<signal>_mark`` with the reason a reading is not used.
+    ``timeline`` has start, mix, job, tank and discharge_low_c, discharge_high_c [C].
 
     Adds time_s [s], lasting_s [s], mass_kg [kg], used_c and smooth_c [C], over_k and under_k [K]
     (above 0 outside), state, and the columns of the timeline in force.
@@ -154,9 +158,9 @@ def find_excursions(
         ("cold", "under_k", "discharge_low_c"),
     ):
         over = rows[column].to_numpy(float)
-        mask = outside_mask(time_s, over, rules.dead_band_k, rules.on_delay_s, rules.longest_gap_s)
+        runs = outside_runs(time_s, over, rules.dead_band_k, rules.on_delay_s, rules.longest_gap_s)
         seen = rows.assign(window_c=rows[bound])
-        for start, end in zip(*run_edges(mask), strict=True):
+        for start, end in zip(*runs, strict=True):
             found.append(_excursion(seen, start, end, side, over, rules, price))
     return tuple(sorted(found, key=lambda one: one.start))
 
@@ -200,19 +204,12 @@ def _excursion(
 
 
 def review_rows(
-    log: pd.DataFrame,
-    timeline: pd.DataFrame,
-    rules: ReviewRules,
-    price: HeatPrice,
-    time_zone: str,
+    rows: pd.DataFrame, rules: ReviewRules, price: HeatPrice, time_zone: str
 ) -> Findings:
     """What a log says against the advice in force at each of its rows.
 
-    ``log`` has time (aware UTC, ascending), mix_id, discharge_c [C], rate_kgs [kg/s], burner_load
-    [1], and for each signal an optional ``<signal>_mark`` with the reason a reading is not used.
-    ``timeline`` has start, mix, job, tank and discharge_low_c, discharge_high_c [C].
+    ``rows`` as trace_rows returns them; hours are those of ``time_zone``.
     """
-    rows = trace_rows(log, timeline, rules)
     excess = excess_tk(
         rows["smooth_c"].where(rows["over_k"].notna()).to_numpy(float),
         rows["discharge_high_c"].to_numpy(float),
@@ -231,7 +228,7 @@ def review_rows(
         cells=_hour_cells(rows, time_zone),
         mixes=_mix_shares(rows, price),
         excursions=find_excursions(rows, rules, price),
-        set_aside=_set_aside(log),
+        set_aside=_set_aside(rows),
         tonnes=float(tonnes.sum()),
         in_window_tonnes=float(tonnes[known & ~hot & ~cold].sum()),
         hot_tonnes=float(tonnes[hot].sum()),

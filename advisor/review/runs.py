@@ -41,10 +41,10 @@ def row_durations_s(time_s: Floats, longest_s: float) -> Floats:
     return np.append(np.where(steps > longest_s, usual, steps), usual)
 
 
-def outside_mask(
+def outside_runs(
     time_s: Floats, over_k: Floats, dead_band_k: float, on_delay_s: float, longest_s: float
-) -> Bools:
-    """Rows that belong to an excursion of ``over_k`` [K] above 0.
+) -> tuple[Ints, Ints]:
+    """First and one-past-last index of every excursion of ``over_k`` [K] above 0.
 
     An excursion begins with the first row of a stretch above 0 that lasts at least
     ``on_delay_s`` [s], and ends when the value has fallen to ``dead_band_k`` [K] below 0 or less.
@@ -53,7 +53,7 @@ def outside_mask(
     """
     count = len(time_s)
     if count == 0:
-        return np.zeros(0, bool)
+        return np.zeros(0, np.intp), np.zeros(0, np.intp)
     after_gap = np.concatenate(([True], np.diff(time_s) > longest_s))
     above = over_k > 0
     begins = np.flatnonzero(above & (after_gap | ~np.concatenate(([False], above[:-1]))))
@@ -63,8 +63,6 @@ def outside_mask(
     # NaN compares false, so a missing value ends an excursion as well.
     ended = np.append(np.flatnonzero(~(over_k > -dead_band_k) | after_gap), count)
     ends = ended[np.searchsorted(ended, begins, side="right")]
-    depth = np.zeros(count + 1, np.int64)
-    np.add.at(depth, begins, 1)
-    np.add.at(depth, ends, -1)
-    inside: Bools = np.cumsum(depth[:-1]) > 0
-    return inside
+    # Stretches that end together are one excursion: the dead band joined them.
+    first = np.concatenate(([True], ends[1:] != ends[:-1])) if len(ends) else np.zeros(0, bool)
+    return begins[first], ends[first]

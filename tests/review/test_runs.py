@@ -5,7 +5,7 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from advisor.review.runs import change_edges, outside_mask, row_durations_s, run_edges
+from advisor.review.runs import change_edges, outside_runs, row_durations_s
 
 # The series of seven readings against 170 that the literature on plant alarms uses to show what a
 # dead band and a delay do; counts derived by hand.
@@ -14,7 +14,14 @@ MINUTES = np.arange(7) * 60.0
 
 
 def excursions(over, dead_band=0.0, delay=0.0, time_s=MINUTES):
-    return len(run_edges(outside_mask(time_s, over, dead_band, delay, 300.0))[0])
+    return len(outside_runs(time_s, over, dead_band, delay, 300.0)[0])
+
+
+def mask_of(time_s, over, dead_band, delay):
+    mask = np.zeros(len(over), bool)
+    for start, end in zip(*outside_runs(time_s, over, dead_band, delay, 300.0), strict=True):
+        mask[start:end] = True
+    return mask
 
 
 @pytest.mark.parametrize(
@@ -26,20 +33,21 @@ def test_dead_band_joins_and_delay_suppresses(dead_band, delay, expected):
 
 def test_an_excursion_begins_with_its_first_row_not_after_the_delay():
     over = np.array([-1.0, 1, 1, 1, -3, -3])
-    mask = outside_mask(np.arange(6) * 60.0, over, 2.0, 180.0, 300.0)
+    mask = mask_of(np.arange(6) * 60.0, over, 2.0, 180.0)
     np.testing.assert_array_equal(mask, [False, True, True, True, False, False])
 
 
 def test_a_gap_in_the_log_ends_an_excursion():
     time_s = np.array([0.0, 60, 120, 7320, 7380, 7440])
-    mask = outside_mask(time_s, np.ones(6), 2.0, 60.0, 300.0)
-    assert mask.all()
+    starts, ends = outside_runs(time_s, np.ones(6), 2.0, 60.0, 300.0)
+    np.testing.assert_array_equal(starts, [0, 3])
+    np.testing.assert_array_equal(ends, [3, 6])
     assert excursions(np.ones(6), 2.0, 200.0, time_s) == 0
 
 
 def test_a_missing_value_ends_an_excursion():
     over = np.array([1.0, 1.0, np.nan, -1.0, -1.0])
-    mask = outside_mask(np.arange(5) * 60.0, over, 2.0, 0.0, 300.0)
+    mask = mask_of(np.arange(5) * 60.0, over, 2.0, 0.0)
     np.testing.assert_array_equal(mask, [True, True, False, False, False])
 
 
@@ -51,7 +59,7 @@ def test_time_nobody_saw_is_not_counted():
 
 def test_an_empty_log_has_no_runs():
     empty = np.zeros(0)
-    assert outside_mask(empty, empty, 1.0, 1.0, 1.0).size == 0
+    assert outside_runs(empty, empty, 1.0, 1.0, 1.0)[0].size == 0
     assert change_edges(empty)[0].size == 0
 
 
@@ -59,8 +67,8 @@ def test_an_empty_log_has_no_runs():
 def test_a_dead_band_never_makes_more_excursions_and_a_delay_never_more_rows(over, band, delay):
     over = np.array(over)
     time_s = np.arange(len(over)) * 60.0
-    bare = outside_mask(time_s, over, 0.0, 0.0, 300.0)
+    bare = mask_of(time_s, over, 0.0, 0.0)
     np.testing.assert_array_equal(bare, over > 0)
     assert excursions(over, band, 0.0, time_s) <= excursions(over, 0.0, 0.0, time_s)
-    wide = outside_mask(time_s, over, band, 0.0, 300.0)
-    assert (outside_mask(time_s, over, band, delay, 300.0) <= wide).all()
+    wide = mask_of(time_s, over, band, 0.0)
+    assert (mask_of(time_s, over, band, delay) <= wide).all()

@@ -1,0 +1,175 @@
+"""The review of a plant folder over a period: log, timeline and kernel put together."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from datetime import datetime, timedelta
+
+import pandas as pd
+
+from advisor.advice.facts import PlantFacts
+from advisor.advice.fuel import fuel_called, kelvin_too_much, money_per_j
+from advisor.advice.situation import gather_situation
+from advisor.advice.timeline import TimelineRow, build_timeline, timeline_frame
+from advisor.errors import AdvisorError, MissingInput
+from advisor.logs import PlantLog, read_logs
+from advisor.logs.cleaning import mark_faults
+from advisor.review.causes import CauseRules
+from advisor.review.kernel import Findings, ReviewRules, review_rows, trace_rows
+from advisor.review.loads import judged_loads, load_excursions
+from advisor.review.result import Excursion, Review, SetAside, Span
+from advisor.review.sentence import review_sentence
+from advisor.review.states import StateRules
+from advisor.review.waste import HeatPrice
+from advisor.settings.cautions import caution_text
+from advisor.settings.tables import load_table
+
+
+@dataclass(frozen=True, eq=False)
+class PlantReview:
+    """A review with what it was made from: the judged rows and loads, and the timeline."""
+
+    review: Review
+    rows: pd.DataFrame
+    loads: pd.DataFrame
+    timeline: tuple[TimelineRow, ...]
+
+
+def review_rules() -> ReviewRules:
+    """The rules of config/review.yaml."""
+    table = load_table("review")
+    excursion, states, cause = table.row("excursion"), table.row("states"), table.row("cause")
+    return ReviewRules(
+        dead_band_k=excursion["dead_band"],
+        on_delay_s=excursion["on_delay"],
+        longest_gap_s=excursion["longest_gap"],
+        smoothing_s=excursion["smoothing"],
+        states=StateRules(
+            running_rate_kgs=states["running_rate"],
+            burner_on=states["burner_on"],
+            short_stop_s=states["short_stop"],
+            settle_s=states["settle"],
+            steady_s=states["steady"],
+            steady_k=states["steady_within"],
+            empty_out_s=states["empty_out"],
+        ),
+        causes=CauseRules(
+            cause["look_back"], cause["rate_change"], cause["heat_change"], cause["window_change"]
+        ),
+    )
+
+
+def log_span(facts: PlantFacts) -> tuple[datetime, datetime]:
+    """First moment of the plant's log and the one after its last row.
+
+    Raises MissingInput where the plant has no log.
+    """
+    if facts.log is None or facts.log.empty:
+        raise MissingInput.of(
+            "no-log",
+            "There is no export of the plant log.",
+            "Put the exports where signals.yaml says.",
+            file=str(facts.folder.path),
+        )
+    first, last = facts.log["time"].iloc[0], facts.log["time"].iloc[-1]
+    return first.to_pydatetime(), last.to_pydatetime() + timedelta(minutes=1)
+
+
+def review_plant(
+    facts: PlantFacts,
+    start: datetime,
+    end: datetime,
+    progress: Callable[[int, int], None] | None = None,
+) -> PlantReview:
+    """The plant's log from ``start`` to ``end`` against the advice that was in force.
+
+    ``progress`` is called with timeline rows done and rows in all. Raises MissingInput where there
+    is no log in the period.
+    """
+    log = read_logs(facts.folder, start, end)
+    if log.frame.empty:
+        zone = facts.folder.zone
+        raise MissingInput.of(
+            "no-log-in-period",
+            f"The log holds nothing from {start.astimezone(zone):%Y-%m-%d %H:%M} to "
+            f"{end.astimezone(zone):%Y-%m-%d %H:%M}.",
+            "Choose another period or bring in the exports.",
+        )
+    timeline = build_timeline(facts, start, end, progress)
+    frame, rules = timeline_frame(timeline), review_rules()
+    marked = mark_faults(log.frame)
+    price = heat_price(facts, timeline)
+    rows = trace_rows(marked, frame, rules)
+    findings = review_rows(rows, rules, price, facts.folder.plant.time_zone)
+    loads = judged_loads(mark_faults(log.tickets), mark_faults(log.arrivals), rows, frame)
+    excursions = [
+        *findings.excursions,
+        *load_excursions(loads, "load_out", rules),
+        *load_excursions(loads, "delivery", rules),
+    ]
+    excursions.sort(key=lambda one: one.start)
+    review = _assembled(facts, start, end, log, findings, tuple(excursions))
+    return PlantReview(review, rows, loads, tuple(timeline))
+
+
+def heat_price(facts: PlantFacts, timeline: list[TimelineRow]) -> HeatPrice:
+    """What a kelvin too much costs, at the first operating point of the period that has advice."""
+    money = money_per_j(facts.folder.plant.dryer) or 0.0
+    for row in timeline:
+        target = row.advice.setpoint("discharge")
+        if target is None:
+            continue
+        try:
+            situation = gather_situation(facts, row.start, row.advice.job)
+            cost = kelvin_too_much(situation, target.target_c)
+        except AdvisorError:
+            continue
+        gross = cost.gross_j_kg_k
+        co2 = float(cost.co2_kg_kg.central / cost.gross_j_kg.central)
+        return HeatPrice(
+            Span(float(gross.low), float(gross.central), float(gross.high)), money, co2
+        )
+    fuel = fuel_called(facts.folder.plant.dryer.fuel.name)
+    return HeatPrice(Span(0.0, 0.0, 0.0), money, fuel.co2_factor_kg_j)
+
+
+def _assembled(
+    facts: PlantFacts,
+    start: datetime,
+    end: datetime,
+    log: PlantLog,
+    findings: Findings,
+    excursions: tuple[Excursion, ...],
+) -> Review:
+    plant = facts.folder.plant
+    of_log = [report for report in log.reports if report.kind == "plant_log"]
+    dropped = tuple(
+        SetAside(f"{report.source}: {reason}", "row", count)
+        for report in of_log
+        for reason, count in report.reasons().items()
+    )
+    return Review(
+        plant=plant.name,
+        start=start,
+        end=end,
+        time_zone=plant.time_zone,
+        rows_read=sum(report.rows_read for report in of_log),
+        rows_used=sum(report.rows_used for report in of_log),
+        rows_set_aside=sum(report.rows_read - report.rows_used for report in of_log),
+        set_aside=(*dropped, *findings.set_aside),
+        states=findings.states,
+        cells=findings.cells,
+        mixes=findings.mixes,
+        excursions=excursions,
+        tonnes=findings.tonnes,
+        in_window_tonnes=findings.in_window_tonnes,
+        hot_tonnes=findings.hot_tonnes,
+        cold_tonnes=findings.cold_tonnes,
+        no_advice_tonnes=findings.no_advice_tonnes,
+        waste=findings.waste,
+        start_up_waste=findings.start_up_waste,
+        currency=plant.currency,
+        sentence=review_sentence(findings, plant.currency),
+        cautions=(caution_text("C14"),),
+    )
