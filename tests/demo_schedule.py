@@ -19,7 +19,7 @@ DAYS = ("2026-10-19", "2026-10-20", "2026-10-21", "2026-10-22", "2026-10-23", "2
 
 @cache
 def moment(local: str, fold: int = 0) -> datetime:
-    """UTC of a plant time such as '2026-10-19 05:40'; ``fold`` 1 is the second of a repeated one."""
+    """UTC of a plant time such as '2026-10-19 05:40'; ``fold`` 1: the second of a repeated one."""
     wall = datetime.fromisoformat(local).replace(tzinfo=ZONE, fold=fold)
     return wall.astimezone(UTC)
 

@@ -403,7 +403,10 @@ def arrivals_file(loads: list[Load]) -> tuple[bytes, list[dict[str, object]]]:
 
 def weather_file() -> bytes:
     noise = Noise("weather")
-    lines = ["# Invented weather for Harrow Fen plant (invented)", "time,air (C),wind (m/s),cloud (%),dew_point (C),rain"]  # fmt: skip
+    lines = [
+        "# Invented weather for Harrow Fen plant (invented)",
+        "time,air (C),wind (m/s),cloud (%),dew_point (C),rain",
+    ]
     at = START
     wind, cloud = 4.5, 60.0
     while at < END:

@@ -11,8 +11,11 @@ from typing import Any
 _HOME = {
     "Intake": "intake",
     "IntakeReport": "report",
+    "MARKS": "cleaning",
     "PlantLog": "plant_log",
     "SetAsideRow": "report",
+    "believed": "cleaning",
+    "mark_faults": "cleaning",
     "read_export": "intake",
     "read_kind": "plant_log",
     "read_logs": "plant_log",

@@ -17,49 +17,19 @@ Decimal = Literal[".", ","]
 
 # What controls write where they have no value; common practice, no source.
 NO_VALUE_TEXTS = frozenset(
-    [
-        "",
-        "#n/a",
-        "n/a",
-        "na",
-        "nan",
-        "null",
-        "none",
-        "bad",
-        "bad input",
-        "---",
-        "--",
-        "-",
-        "*",
-        "**",
-        "***",
-        "?",
-        "i/o timeout",
-        "timeout",
-        "comm fail",
-        "no data",
-        "1.#qnan",
-        "1.#ind",
-        "-1.#ind",
-        "inf",
-        "-inf",
-        "#value!",
-        "#ref!",
-        "#div/0!",
-        "ovr",
-        "under",
-        "over",
-        "fault",
-    ]
+    (
+        *("", "-", "--", "---", "----", "*", "**", "***", "?", "na", "n/a", "#n/a", "nan", "null"),
+        *("none", "no data", "bad", "bad input", "fault", "over", "under", "ovr", "timeout"),
+        *("i/o timeout", "comm fail", "inf", "-inf", "1.#qnan", "1.#ind", "-1.#ind", "#value!"),
+        *("#ref!", "#div/0!"),
+    )
 )
 # Numbers written by controls instead of a value: broken sensor, overflow, no reading.
 NO_VALUE_NUMBERS = frozenset(
     (-9999.0, -999.0, -999.9, 9999.0, 999.9, 99999.0, 3276.7, -3276.8, 32767.0, -32768.0, 65535.0)
 )
-_ON = frozenset(
-    ["1", "on", "true", "yes", "y", "run", "running", "ein", "ja", "marche", "oui", "si", "on."]
-)
-_OFF = frozenset(["0", "off", "false", "no", "n", "stop", "stopped", "aus", "nein", "arret", "non"])
+_ON = frozenset(("1", "on", "true", "yes", "y", "run", "running", "ein", "ja", "marche", "oui"))
+_OFF = frozenset(("0", "off", "false", "no", "n", "stop", "stopped", "aus", "nein", "non"))
 
 _PLAIN = {
     ".": re.compile(r"[+-]?(?:\d+(?:\.\d*)?|\.\d+)(?:[eE][+-]?\d+)?"),
@@ -90,9 +60,9 @@ _UNIT_WORDS = {
 
 @dataclass(frozen=True)
 class Numbers:
-    """Number of each text, NaN where there is none, and why: no value written, or not readable."""
+    """Number of each text, NaN where there is none; and why: no value written, or not readable."""
 
-    values: NDArray[np.float64]
+    inside: NDArray[np.float64]
     no_value: NDArray[np.bool_]
     unreadable: NDArray[np.bool_]
 

@@ -32,19 +32,7 @@ from advisor.settings.signals import LogSource
 from advisor.units import to_si
 
 _TOTALS = frozenset(
-    [
-        "total",
-        "totals",
-        "sum",
-        "summe",
-        "gesamt",
-        "mean",
-        "average",
-        "mittelwert",
-        "min",
-        "max",
-        "count",
-    ]
+    ("total", "totals", "sum", "summe", "gesamt", "mean", "average", "mittelwert", "min", "max")
 )
 _FAR_AWAY = np.timedelta64(400, "D")
 _FIRST_TIME, _LAST_TIME = np.datetime64("1990-01-01"), np.datetime64("2100-01-01")
@@ -210,7 +198,7 @@ def _signals(
             continue
         numbers = _numbers(texts, signal, units.get(heading, ""), decimal, source, mapped.words)
         cells.append(_Cells(signal, numbers, texts.which))
-        values = numbers.values[texts.which]
+        values = numbers.inside[texts.which]
         if is_switch(signal):
             columns[signal] = pd.array(
                 [None if np.isnan(value) else bool(value) for value in values], dtype="boolean"

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from datetime import datetime
 from pathlib import Path
 
@@ -10,6 +10,7 @@ import numpy as np
 import pandas as pd
 
 from advisor.errors import AdvisorError, Fault, FaultyInput, MissingInput
+from advisor.logs.cleaning import mark_faults
 from advisor.logs.intake import Intake, read_export
 from advisor.logs.report import IntakeReport, SetAsideRow, refused_report
 from advisor.logs.signals import SHAPES, SourceKind
@@ -22,7 +23,8 @@ class PlantLog:
     """What the exports of a period say; times in UTC, everything in inside units.
 
     ``frame`` holds one row per time of the plant log; the other three are empty where the plant
-    has no such export. ``reports`` count every row of every file, in the period or not.
+    has no such export. Beside every number stands ``<signal>_mark``: why a reading is not
+    believed, empty where it is. ``reports`` count every row of every file, in the period or not.
     """
 
     frame: pd.DataFrame
@@ -44,7 +46,8 @@ def read_logs(
     reports: list[IntakeReport] = []
     for kind in SHAPES:
         frame, of_kind = read_kind(folder, kind)
-        frames[kind] = _between(frame, start, end)
+        # Marked before the period is cut out: a fault is known by what is before and after it.
+        frames[kind] = _between(mark_faults(frame), start, end)
         reports.extend(of_kind)
     of_log = [report for report in reports if report.kind == "plant_log"]
     if not of_log:
@@ -121,7 +124,7 @@ def _joined(intakes: list[Intake], key: str) -> tuple[pd.DataFrame, list[IntakeR
         ]
         reports.append(intake.report.with_set_aside(tuple(repeated)))
     used = whole[~again].sort_values("time", kind="stable", ignore_index=True)
-    return used, [replace(report) for report in reports]
+    return used, reports
 
 
 def _between(frame: pd.DataFrame, start: datetime | None, end: datetime | None) -> pd.DataFrame:
