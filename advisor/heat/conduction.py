@@ -113,13 +113,14 @@ def conduct(
                 bottom.part(cases, count),
                 times if times.ndim == 1 else some_rows(times),
                 some_rows(depths),
+                finer,
             )
             for finer in range(grids, 0, -1)
         ]
         if grids == 1:
             merged = found[0]
         else:
-            # second order in space, and the coarse cells are halved
+            # second order in space and time, and both cells and steps are halved
             merged = tuple(
                 fine + (fine - coarse) / 3.0 for fine, coarse in zip(*found, strict=True)
             )

@@ -17,9 +17,8 @@ from advisor.heat.mat import (
     value_at,
 )
 
-_STEPS_QUICK, _STEPS = 10, 20
-# The mean is good with fewer cells than mid-depth, both to 0.05 K.
-_CELLS: dict[Criterion, tuple[int, int]] = {"mean": (6, 8), "mid": (10, 8)}
+_STEPS = 4
+_CELLS: dict[Criterion, tuple[int, int]] = {"mean": (8, 8), "mid": (10, 8)}
 _FIRST_C = 145.0
 _WITHIN_C = 0.0, 390.0  # where the runs are made, whatever the answer
 
@@ -49,23 +48,24 @@ def laydown_needed_c(
         np.broadcast_to(np.asarray(one, float), shape).ravel() for one in (rolling_s, end_c)
     )
 
-    def left_c(laydown_c: Floats, steps: int, grids: int) -> Floats:
-        times = steps_until_s(every, until, steps)
+    times = steps_until_s(every, until, _STEPS)
+
+    def left_c(laydown_c: Floats, grids: int) -> Floats:
         values = chosen(
             cool_mat(every, laydown_c, times, grids=grids, cells=_CELLS[criterion]), criterion
         )
         return value_at(times, values, until)
 
     first = np.full(until.shape, _FIRST_C)
-    left = left_c(first, _STEPS_QUICK, 1)
+    left = left_c(first, 1)
     cold = np.minimum(every.base_c, end - 20.0)
     rough = np.maximum((left - cold) / (_FIRST_C - cold), 0.05)
     # kept 5 K away from the first, so that the slope between them is one
     second = _kept_off(first, first + (end - left) / rough)
-    left_second = left_c(second, _STEPS_QUICK, 1)
+    left_second = left_c(second, 1)
     slope = (left_second - left) / (second - first)
     near = np.clip(second + (end - left_second) / slope, *_WITHIN_C)
-    return np.asarray(near + (end - left_c(near, _STEPS, 2)) / slope).reshape(shape)
+    return np.asarray(near + (end - left_c(near, 2)) / slope).reshape(shape)
 
 
 def _kept_off(first_c: Floats, second_c: Floats) -> Floats:

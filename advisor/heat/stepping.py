@@ -50,7 +50,7 @@ class Stepper:
         self._set_conductance()
         self.surface_c = self.temperature_c[0].copy()
         for _ in range(3):
-            self._surface(self.half_top, self.temperature_c[0])
+            self._begins = self._at_faces()
 
     def step(self, start_s: Floats, end_s: Floats) -> None:
         """Advance from ``start_s`` to ``end_s`` [s], scalar or (cases,)."""
@@ -61,8 +61,8 @@ class Stepper:
             self._set_faces(start_s + 0.5 * length, just_before=False)
             self._set_conductance()
             self._set_faces(start_s, just_before=False)
-        begins_top = self._surface(self.half_top, self.temperature_c[0])
-        begins_bottom = self._passed_bottom(self.temperature_c[-1])
+            self._begins = self._at_faces()
+        begins_top, begins_bottom = self._begins
         old = self.storage.heat(self.temperature_c)
         known = old / tau
         known += self.into_wm2
@@ -89,6 +89,7 @@ class Stepper:
         new[0] += passed_top
         new[-1] += passed_bottom
         self.into_wm2 = new
+        self._begins = passed_top, passed_bottom
 
     def _stage(self, known: Floats, tau: Floats, first: bool) -> tuple[Floats, Floats, Floats]:
         """Heat in the cells [J/m2] with heat/tau + outflow = ``known``, and what the faces pass.
@@ -162,6 +163,13 @@ class Stepper:
             self.surface_c = gained / lost
         return np.asarray(conductance * (behind_c - self.surface_c))
 
+    def _at_faces(self) -> tuple[Floats, Floats]:
+        """Heat [W/m2] that passes top and bottom now."""
+        return (
+            self._surface(self.half_top, self.temperature_c[0]),
+            self._passed_bottom(self.temperature_c[-1]),
+        )
+
     def _passed_bottom(self, last_c: Floats) -> Floats:
         return np.asarray(self._conductance * last_c - self._source)
 
@@ -190,9 +198,12 @@ class Stepper:
 
 
 def advance(
-    cells: Cells, top: Face, bottom: Face, times_s: Floats, depths_m: Floats
+    cells: Cells, top: Face, bottom: Face, times_s: Floats, depths_m: Floats, substeps: int
 ) -> tuple[Floats, ...]:
-    """Means, depths, faces and heat [C, J/m2] at ``times_s``, in the order of ``Conduction``."""
+    """Means, depths, faces and heat [C, J/m2] at ``times_s``, in the order of ``Conduction``.
+
+    Each interval is taken in ``substeps``, even in the root of time.
+    """
     body = Stepper(cells, top, bottom)
     count, cases = len(times_s), cells.start_c.shape[1]
     shares = [cells.volume_m[span] / cells.volume_m[span].sum(axis=0) for span in cells.spans]
@@ -200,15 +211,24 @@ def advance(
     mean = np.empty((len(shares), count, cases))
     depth = np.empty((len(weights), count, cases))
     faces = np.empty((5, count, cases))
-    start = body.storage.heat(cells.start_c)
+    start = body.storage.held(cells.start_c)
+    roots = np.sqrt(times_s)
+    least = 1e-9 * np.max(times_s)  # times that differ by rounding only are one
     for at in range(count):
-        if at:
-            body.step(times_s[at - 1], times_s[at])
+        since = times_s[at - 1]
+        moved = at > 0 and np.max(times_s[at] - since) > least
+        for part in range(1, substeps + 1 if moved else 0):
+            share = part / substeps
+            low, high = roots[at - 1], roots[at]
+            passed = share * (2.0 * low + share * (high - low)) / (low + high)
+            until = times_s[at - 1] + (times_s[at] - times_s[at - 1]) * passed
+            body.step(since, until)
+            since = until
         now = body.temperature_c
         for row, share, span in zip(mean, shares, cells.spans, strict=True):
             row[at] = np.einsum("ij,ij->j", share, now[span])
         for row, weight in zip(depth, weights, strict=True):
             row[at] = np.einsum("ij,ij->j", weight, now)
-        stored = (body.storage.heat(now) - start).sum(axis=0)
+        stored = body.storage.held(now) - start
         faces[:, at] = body.surface_c, body.bottom_c(), body.left_top, body.left_bottom, stored
     return mean, depth, *faces

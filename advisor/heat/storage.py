@@ -34,6 +34,12 @@ class Storage:
             heat = heat + self.latent * melted
         return heat
 
+    def held(self, temperature_c: Floats) -> Floats:
+        """Heat [J/m2] of all cells (cases,)."""
+        if self.linear:
+            return np.asarray(np.einsum("ij,ij->j", self.capacity, temperature_c))
+        return np.asarray(self.heat(temperature_c).sum(axis=0))
+
     def linear_at(self, temperature_c: Floats) -> tuple[Floats, Floats | None]:
         """Slope [J/m2K] and rest [J/m2], None for 0, of the heat as a line at ``temperature_c``."""
         if self.linear:
