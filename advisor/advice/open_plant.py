@@ -55,6 +55,6 @@ def moment_now(folder: PlantFolder, written: str | None = None) -> datetime:
     """
     if written:
         return utc_of(written, folder.zone)
-    if folder.plant.invented and folder.plant.shown_at:
+    if folder.plant.shown_at:
         return utc_of(folder.plant.shown_at, folder.zone)
     return datetime.now(UTC)

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
 from dataclasses import dataclass
 
@@ -99,8 +100,9 @@ def planned_sd_k(
 
 
 def _settled_error_k(older: ViscosityCurve, newer: ViscosityCurve, viscosity_pas: float) -> float:
-    both = [planned_sd_k(one, _SETTLE_AT_C, _SETTLE_SD, viscosity_pas) for one in (older, newer)]
-    return float(np.hypot(*both))
+    return math.hypot(
+        *(planned_sd_k(one, _SETTLE_AT_C, _SETTLE_SD, viscosity_pas) for one in (older, newer))
+    )
 
 
 def _sentence(shift: Shift, score: float, same_laboratory: bool) -> str:

@@ -39,11 +39,12 @@ def review(plant: Path, start: str | None, end: str | None, as_json: bool) -> No
         zone = facts.folder.zone
         begin = utc_of(start, zone) if start else first
         until = utc_of(end, zone) if end else last
-        with click.progressbar(
+        bar: click.progressbar[int] = click.progressbar(
             length=100,
             label="Working out the advice of the period",
             file=click.get_text_stream("stderr"),
-        ) as bar:
+        )
+        with bar:
 
             def progress(done: int, of: int) -> None:
                 bar.update(round(100 * done / max(of, 1)) - bar.pos)

@@ -9,7 +9,7 @@ from typing import Literal
 Anchor = Literal["right", "left", "above", "below", "above right", "above left", "below right",
                  "below left"]  # fmt: skip
 
-# Width of a letter and height of a line as shares of the type size; from the fonts used, rounded up.
+# Width of a letter and height of a line as shares of the type size, rounded up from the fonts used.
 _LETTER, _LINE = 0.6, 1.25
 _SHIFT: dict[Anchor, tuple[str, str, int, int]] = {
     # xanchor, yanchor, then the way to shift in x and y
@@ -87,7 +87,8 @@ class Room:
         outside = max(0.0, -left) + max(0.0, right - self.width)
         outside += max(0.0, -low) + max(0.0, high - self.height)
         shared = sum(
-            max(0.0, min(right, b[2]) - max(left, b[0])) * max(0.0, min(high, b[3]) - max(low, b[1]))
+            max(0.0, min(right, b[2]) - max(left, b[0]))
+            * max(0.0, min(high, b[3]) - max(low, b[1]))
             for b in self.taken
         )
         return shared + 40 * outside

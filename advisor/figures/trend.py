@@ -236,9 +236,7 @@ def _tickets(
         y=[_drawn(one.load_out_c, units) for one in known],
         mode="markers",
         marker={"symbol": "square-open", "size": 7, "color": ink.quiet, "line": {"width": 1.5}},
-        customdata=[
-            [one.ticket, one.truck, f"{one.time.astimezone(zone):%H:%M}"] for one in known
-        ],
+        customdata=[[one.ticket, one.truck, f"{one.time.astimezone(zone):%H:%M}"] for one in known],
         hovertemplate="load %{customdata[0]}, truck %{customdata[1]}, %{customdata[2]}<br>"
         f"load-out %{{y:.0f}} {shown_unit('temperature', units)}<extra></extra>",
     )
@@ -271,5 +269,3 @@ def _local_words(times: NDArray[np.datetime64], zone: ZoneInfo) -> list[str]:
         f"{one.replace(tzinfo=utc).astimezone(zone):%a %H:%M}"
         for one in times.astype("datetime64[us]").tolist()
     ]
-
-

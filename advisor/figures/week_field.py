@@ -45,12 +45,18 @@ def week_field(
     colours = (ink.window, ink.hot_weak, ink.hot, ink.cold_weak, ink.cold)
     made = [one for one in review.cells if one.distance_k is not None]
     rows = {day: place for place, day in enumerate(days)}
+    # Every hour of every day has its place, so that all cells are equally wide.
+    kind_of: list[list[int | None]] = [[None] * 24 for _ in days]
+    hover = [[["", ""] for _ in range(24)] for _ in days]
+    for one in made:
+        kind_of[rows[one.day]][one.hour] = kinds.index(_kind(one))
+        hover[rows[one.day]][one.hour] = [one.day, _hover(one, units)]
     figure.add_heatmap(
         name="cells",
-        x=[one.hour for one in made],
-        y=[rows[one.day] for one in made],
-        z=[kinds.index(_kind(one)) for one in made],
-        customdata=[[one.day, _hover(one, units)] for one in made],
+        x=list(range(24)),
+        y=list(range(len(days))),
+        z=kind_of,
+        customdata=hover,
         zmin=0,
         zmax=4,
         colorscale=[
@@ -62,6 +68,7 @@ def week_field(
         xgap=2,
         ygap=2,
         hovertemplate="%{customdata[1]}<extra></extra>",
+        hoverongaps=False,
     )
     outside = [one for one in made if one.distance_k]
     figure.add_scatter(

@@ -62,6 +62,7 @@ class Layer:
 class Cells:
     """A body cut into cells, arrays (cells, cases) per unit of top face.
 
+    ``depth_m`` are the middles of the cells, ``edge_m`` their lower edges.
     ``link`` is the conductance [W/m2K] from each cell to the next, ``to_top`` and ``to_bottom``
     (cases,) the half cells at the faces; ``spans`` are the cells of each layer. ``capacity`` and
     ``latent`` are of the whole cell [J/m2K, J/m2]; ``slope`` and ``latent`` are None where 0.
@@ -69,6 +70,7 @@ class Cells:
 
     volume_m: Floats
     depth_m: Floats
+    edge_m: Floats
     link: Floats
     to_top: Floats
     to_bottom: Floats
@@ -79,28 +81,28 @@ class Cells:
     slope_at_c: Floats
     latent: Floats | None
 
-    def weights_at(self, depth_m: Floats) -> Floats:
-        """Weights (cells, cases) that give the temperature at ``depth_m`` (cases,).
+    def weights_at(self, depths_m: Floats) -> Floats:
+        """Weights (depths, cells, cases) that give the temperature at ``depths_m`` (depths, cases).
 
         A cubic through the four nearest cells of the layer the depth lies in.
         """
         ends = np.array([span.stop for span in self.spans])
-        case = np.arange(self.depth_m.shape[1])
-        # a depth on a contact counts to the layer above it
-        lower = np.stack(
-            [(self.depth_m[end - 1 : end + 1].mean(axis=0)) for end in ends[:-1]]
-            or [np.full(len(case), np.inf)]
-        )
-        layer = (depth_m > lower * (1 + 1e-9)).sum(axis=0)
-        stop = ends[layer]
-        start = np.concatenate([[0], ends[:-1]])[layer]
-        first = np.clip((self.depth_m < depth_m).sum(axis=0) - 2, start, stop - 4)
-        weights = np.zeros_like(self.depth_m)
-        places = [self.depth_m[first + i, case] for i in range(4)]
+        layer = np.zeros(depths_m.shape, int)
+        for end in ends[:-1]:
+            # a depth on a contact counts to the layer above it
+            layer += depths_m > self.edge_m[end - 1] * (1.0 + 1e-9)
+        start, stop = np.concatenate([[0], ends[:-1]])[layer], ends[layer]
+        above = (self.depth_m[None] < depths_m[:, None]).sum(axis=1)
+        first = np.clip(above - 2, start, stop - 4)
+        rows, cases = np.indices(depths_m.shape)
+        places = [self.depth_m[first + i, cases] for i in range(4)]
+        weights = np.zeros((len(depths_m), *self.depth_m.shape))
         for i, own in enumerate(places):
-            others = [place for j, place in enumerate(places) if j != i]
-            part = np.prod([(depth_m - one) / (own - one) for one in others], axis=0)
-            weights[first + i, case] = part
+            part = np.ones(depths_m.shape)
+            for j, other in enumerate(places):
+                if j != i:
+                    part *= (depths_m - other) / (own - other)
+            weights[rows, first + i, cases] = part
         return weights
 
 
@@ -113,9 +115,9 @@ def cut(layers: tuple[Layer, ...], cases: int, finer: int, radius_m: Floats | No
     rows: dict[str, list[Floats]] = {}
     above: tuple[Layer, Floats] | None = None
     for layer in layers:
-        first = _first_width(layer, cases, above)
-        width = np.diff(_edges(layer, cases, layer.cells * finer, first), axis=0)
-        above = layer, np.diff(_edges(layer, cases, layer.cells, first)[-2:], axis=0)[0]
+        edges = _edges(layer, cases, finer, above)
+        width = np.diff(edges, axis=0)
+        above = layer, edges[-1] - edges[-1 - finer]  # its last coarse cell
         widths.append(width)
         for name, value in (
             ("k", layer.conductivity_wmk),
@@ -144,6 +146,7 @@ def cut(layers: tuple[Layer, ...], cases: int, finer: int, radius_m: Floats | No
     return Cells(
         volume_m=volume,
         depth_m=depth,
+        edge_m=edge,
         link=link,
         to_top=1.0 / half[0],
         to_bottom=1.0 / half[-1],
@@ -156,28 +159,26 @@ def cut(layers: tuple[Layer, ...], cases: int, finer: int, radius_m: Floats | No
     )
 
 
-def _first_width(layer: Layer, cases: int, above: tuple[Layer, Floats] | None) -> Floats:
-    """Width (cases,) [m] of the first coarse cell of a layer that is thin at its top."""
-    if above is None:
-        return np.broadcast_to(np.asarray(layer.thickness_m, float), (cases,)) / (4 * layer.cells)
-    # The first cell passes heat as fast as the last one above: equal width over root of
-    # diffusivity, so that the jump at the contact is resolved alike on both sides.
-    other, width = above
-    own = np.asarray(layer.conductivity_wmk, float) / np.asarray(layer.capacity_jm3k, float)
-    its = np.asarray(other.conductivity_wmk, float) / np.asarray(other.capacity_jm3k, float)
-    return np.asarray(width * np.sqrt(own / its))
+def _edges(layer: Layer, cases: int, finer: int, above: tuple[Layer, Floats] | None) -> Floats:
+    """Edges (cells + 1, cases) [m] of one layer, each coarse cell cut into ``finer``.
 
-
-def _edges(layer: Layer, cases: int, cells: int, first_m: Floats) -> Floats:
-    """Edges (cells + 1, cases) [m] of one layer cut into ``cells``.
-
-    The stretching is that of the coarse grid whatever ``cells`` is, as extrapolation needs.
+    The stretching is that of the coarse grid whatever ``finer`` is, as extrapolation needs.
+    ``above`` is the layer above with the width of its last coarse cell.
     """
-    place = np.linspace(0.0, 1.0, cells + 1)[:, None]
+    place = np.linspace(0.0, 1.0, layer.cells * finer + 1)[:, None]
     thickness = np.broadcast_to(np.asarray(layer.thickness_m, float), (cases,))
     if layer.spacing == "both faces":
         return np.asarray((0.4 * place + 0.3 * (1.0 - np.cos(np.pi * place))) * thickness)
-    stretch = _stretch(thickness / first_m, layer.cells)
+    if above is None:
+        first = thickness / (4 * layer.cells)
+    else:
+        # The first cell passes heat as fast as the last one above: equal width over root of
+        # diffusivity, so that the jump at the contact is resolved alike on both sides.
+        other, width = above
+        own = np.divide(layer.conductivity_wmk, layer.capacity_jm3k)
+        its = np.divide(other.conductivity_wmk, other.capacity_jm3k)
+        first = width * np.sqrt(own / its)
+    stretch = _stretch(thickness / first, layer.cells)
     return np.asarray(np.expm1(stretch * place) / np.expm1(stretch) * thickness)
 
 
@@ -185,7 +186,7 @@ def _stretch(total_over_first: Floats, cells: int) -> Floats:
     """Stretch a of the edges (exp(a s) - 1)/(exp(a) - 1) whose first of ``cells`` fits."""
     wanted = np.log(np.maximum(total_over_first, cells * 1.02))
     stretch = 2.0 * cells / (cells - 1) * (wanted - np.log(cells))  # mean over geometric mean
-    for _ in range(6):
+    for _ in range(4):
         whole, one = np.expm1(stretch), np.expm1(stretch / cells)
         slope = 1.0 + 1.0 / whole - (1.0 + 1.0 / one) / cells
         stretch = np.maximum(stretch - (np.log(whole / one) - wanted) / slope, 1e-3)

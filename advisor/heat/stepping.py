@@ -207,7 +207,7 @@ def advance(
     body = Stepper(cells, top, bottom)
     count, cases = len(times_s), cells.start_c.shape[1]
     shares = [cells.volume_m[span] / cells.volume_m[span].sum(axis=0) for span in cells.spans]
-    weights = [cells.weights_at(depth) for depth in depths_m]
+    weights = cells.weights_at(depths_m)
     mean = np.empty((len(shares), count, cases))
     depth = np.empty((len(weights), count, cases))
     faces = np.empty((5, count, cases))

@@ -20,7 +20,7 @@ class Storage:
         self.capacity, self.latent = cells.capacity, cells.latent
         self.slope, self.at_c = cells.slope, cells.slope_at_c
         self.linear = self.slope is None and self.latent is None
-        self.passes = 1 if self.linear else 3 if self.latent is None else 6
+        self.passes = 1 if self.linear else 3
 
     def heat(self, temperature_c: Floats) -> Floats:
         """Heat [J/m2] at ``temperature_c``, from 0 C (from ``slope_at_c`` with a slope)."""

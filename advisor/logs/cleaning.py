@@ -181,7 +181,8 @@ def _after(live: Bools, time_s: Floats, delay_s: float) -> Bools:
     begun = np.full(len(live), np.inf)
     for start, end in zip(starts, ends, strict=True):
         begun[start:end] = time_s[start]
-    return live & (time_s - begun >= delay_s)
+    late: Bools = time_s - begun >= delay_s
+    return live & late
 
 
 def _other_mix_sensors(frame: pd.DataFrame, signal: str) -> Floats:

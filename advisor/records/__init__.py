@@ -1,5 +1,6 @@
 """Records: dated facts in one SQLite file, added and never changed; text in, text out."""
 
+from advisor.records.agreement import disagreements
 from advisor.records.entry import Entry
 from advisor.records.files import ImportReport, export_files, import_files
 from advisor.records.kinds import KINDS
@@ -13,6 +14,7 @@ __all__ = [
     "ImportReport",
     "Records",
     "correction",
+    "disagreements",
     "export_files",
     "import_files",
     "new_entry",

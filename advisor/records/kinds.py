@@ -9,6 +9,7 @@ from zoneinfo import ZoneInfo
 from pydantic import Field, PlainSerializer, PlainValidator, ValidationInfo, model_validator
 
 from advisor.errors import AdvisorError
+from advisor.settings.certificate import Certificate
 from advisor.settings.fields import (
     BaseTemperature,
     BinderTankTemperature,
@@ -22,13 +23,6 @@ from advisor.settings.fields import (
     refusal,
 )
 from advisor.settings.moments import utc_of
-
-try:
-    from advisor.settings.certificate import Certificate
-except ModuleNotFoundError:  # the binder room's model is not written yet
-
-    class Certificate(Strict, extra="allow"):
-        pass
 
 
 def _read_moment(raw: Any, info: ValidationInfo) -> dt.datetime:

@@ -112,7 +112,7 @@ def _register_shell(app: Dash, source: Source) -> None:
         Input("address", "search"),
     )
     def open_page(pathname: str | None, search: str | None) -> tuple[Any, Any]:
-        page = next((one for one in PAGES if one.PATH == (pathname or "/")), None)
+        page = next((one for one in PAGES if (pathname or "/") == one.PATH), None)
         links = [
             dcc.Link(
                 one.TITLE,

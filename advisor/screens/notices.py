@@ -85,8 +85,8 @@ def _outside(
 ) -> Notice:
     value = reading.value_c if reading.value_c is not None else bound_c
     side = "above high" if verdict == "hot" else "below low"
-    lines = [f"Reads {temperature_words(value, units)}, the bound is "
-             f"{temperature_words(bound_c, units)}."]  # fmt: skip
+    bound = temperature_words(bound_c, units)
+    lines = [f"Reads {temperature_words(value, units)}, the bound is {bound}."]
     reach = reach_words(view)
     if reach and reading.point == "discharge":
         lines.append(reach)

@@ -33,6 +33,8 @@ PAGE = "review"
 TITLE = "Review"
 PATH = "/review"
 TRACE_PX = 270
+# Over a longer time the loads would lie on one another.
+LOADS_SHOWN_WITHIN = timedelta(hours=30)
 
 
 def layout(source: Source, search: str | None) -> Any:
@@ -112,8 +114,9 @@ def layout(source: Source, search: str | None) -> Any:
                     ),
                     html.P(id=id_of(PAGE, "trace-words"), className="heard-only"),
                     html.P(
-                        "Band: the window in force. Squares: loads at load-out. Drag along the "
-                        "time to look closer, press twice to go back.",
+                        "Band: the window in force; line in it: the target. Drag along the time to "
+                        "look closer, press twice to go back; within 30 hours squares show the "
+                        "loads at load-out.",
                         className="note screen-only",
                     ),
                 ],
@@ -213,6 +216,7 @@ def register(app: Dash, source: Source) -> None:
             "mixes_style": Output(id_of(PAGE, "mixes"), "style"),
             "rows": Output(id_of(PAGE, "table"), "rowData"),
             "columns": Output(id_of(PAGE, "table"), "columnDefs"),
+            "grid": Output(id_of(PAGE, "table"), "dashGridOptions"),
             "table_title": Output(id_of(PAGE, "table-title"), "children"),
         },
         inputs={**period, **chosen, "narrow": Input("narrow", "data")},
@@ -238,6 +242,7 @@ def register(app: Dash, source: Source) -> None:
             "mixes_style": {"height": f"{bars_height(len(review.mixes))}px"},
             "rows": parts.excursion_rows(found, source.zone, units, review.currency),
             "columns": parts.excursion_columns(units),
+            "grid": parts.grid_options(len(found)),
             "table_title": f"Excursions: {len(found)} of {len(review.excursions)}",
         }
 
@@ -284,7 +289,8 @@ def register(app: Dash, source: Source) -> None:
                 span = _zoomed(span, zoomed or {})
             readings = source.discharge(*span)
             windows = source.windows_in_force(*span)
-            tickets = source.tickets(*span)
+            close = span[1] - span[0] <= LOADS_SHOWN_WITHIN
+            tickets = source.tickets(*span) if close else ()
         except AdvisorError:
             return {"trace": blank(), "trace_title": "Trace", "trace_words": ""}
         return {

@@ -27,6 +27,8 @@ from advisor.units import UnitSystem, shown_number, shown_unit
 
 # A chosen excursion is shown with this much before and after it.
 AROUND_MIN = 30
+# Rows of the excursions table on one leaf.
+LEAF = 20
 
 
 def summary(review: Review, units: UnitSystem) -> Any:
@@ -112,7 +114,15 @@ def states_table(review: Review, units: UnitSystem) -> Any:
     """How long the plant was in each state, and what it made there."""
     return html.Table(
         [
-            html.Thead(html.Tr([html.Th("state"), html.Th("time"), html.Th("made")])),
+            html.Thead(
+                html.Tr(
+                    [
+                        html.Th("state"),
+                        html.Th("time", className="number"),
+                        html.Th("made", className="number"),
+                    ]
+                )
+            ),
             html.Tbody(
                 [
                     html.Tr(
@@ -201,21 +211,33 @@ def excursion_columns(units: UnitSystem) -> list[dict[str, Any]]:
         return {"field": field, "headerName": name, "width": width, "type": "rightAligned"}
 
     return [
-        {"field": "when", "headerName": "start", "width": 145, "pinned": "left"},
-        {"field": "side", "headerName": "side", "width": 90},
+        {"field": "when", "headerName": "start", "width": 150, "pinned": "left"},
+        {"field": "side", "headerName": "side", "width": 84},
+        number("minutes", "min", 70),
+        number("tonnes", shown_unit("mass", units), 76),
+        number("peak", f"peak, {degree}", 94),
+        number("limit", f"limit, {degree}", 94),
+        number("fuel", shown_unit("energy", units), 88),
+        {"field": "money", "headerName": "money", "width": 136},
+        {"field": "mix", "headerName": "mix", "width": 90},
+        {"field": "cause", "headerName": "likely cause", "minWidth": 290, "flex": 1},
+        {"field": "evidence", "headerName": "evidence", "minWidth": 420, "flex": 2},
         {"field": "where", "headerName": "where", "width": 140},
-        number("minutes", "min", 75),
-        number("tonnes", shown_unit("mass", units), 75),
-        number("peak", f"peak, {degree}", 100),
-        number("limit", f"limit, {degree}", 100),
-        number("fuel", shown_unit("energy", units), 85),
-        {"field": "money", "headerName": "money", "width": 130},
-        {"field": "mix", "headerName": "mix", "width": 110},
         {"field": "job", "headerName": "job", "width": 90},
         {"field": "state", "headerName": "state", "width": 115},
-        {"field": "cause", "headerName": "likely cause", "minWidth": 240, "flex": 1},
-        {"field": "evidence", "headerName": "evidence", "minWidth": 320, "flex": 2},
-    ]  # fmt: skip
+    ]
+
+
+def grid_options(count: int) -> dict[str, Any]:
+    """Options of the excursions table for ``count`` rows: leaves to turn only where it is long."""
+    return {
+        "domLayout": "autoHeight",
+        "rowSelection": {"mode": "singleRow", "checkboxes": False, "enableClickSelection": True},
+        "pagination": count > LEAF,
+        "paginationPageSize": LEAF,
+        "paginationPageSizeSelector": False,
+        "suppressNoRowsOverlay": True,
+    }
 
 
 def excursion_grid(grid_id: str) -> Any:
@@ -225,13 +247,6 @@ def excursion_grid(grid_id: str) -> Any:
         columnDefs=[],
         rowData=[],
         defaultColDef={"resizable": True, "sortable": True},
-        dashGridOptions={
-            "domLayout": "autoHeight",
-            "rowSelection": {"mode": "singleRow", "checkboxes": False, "enableClickSelection": True},
-            "overlayNoRowsTemplate": "No excursion in what is chosen.",
-            "pagination": True,
-            "paginationPageSize": 20,
-            "paginationPageSizeSelector": False,
-        },
+        dashGridOptions=grid_options(0),
         className="excursion-grid",
-    )  # fmt: skip
+    )

@@ -207,7 +207,14 @@ def shown(
         "path": heat_path(view.advice, view.readings, units, ink, narrow),
         "path-words": heat_path_words(view.advice, view.readings, units),
         "trend": trend(
-            view.discharge, view.windows, view.trend_start, view.at, view.zone, units, ink, narrow=narrow
+            view.discharge,
+            view.windows,
+            view.trend_start,
+            view.at,
+            view.zone,
+            units,
+            ink,
+            narrow=narrow,
         ),
         "trend-words": trend_words(view.discharge, view.windows, units),
         "notices": parts.notice_list(notices(view, units)),

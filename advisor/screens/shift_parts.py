@@ -62,9 +62,7 @@ def clock(source: Source, heard: int) -> Parts:
     """Day, clock, shift and the age of the data; ``heard`` counts the answers for the page."""
     at = source.now()
     last = source.last_reading_at(at)
-    words = " · ".join(
-        one for one in (moment_words(at, source.zone), source.shift_name(at)) if one
-    )
+    words = " · ".join(one for one in (moment_words(at, source.zone), source.shift_name(at)) if one)
     age_s = (at - last).total_seconds() if last else None
     age = "no data" if age_s is None else f"data {age_words(age_s)} old"
     return [
@@ -121,7 +119,10 @@ def _card(setpoint: Setpoint, reading: Reading | None, units: UnitSystem) -> obj
         [
             html.Div([html.H2(setpoint.label), _why_button(setpoint, number)], className="name"),
             html.P(
-                [html.Span(number, className="figure"), html.Span(unit_words(units), className="unit")],
+                [
+                    html.Span(number, className="figure"),
+                    html.Span(unit_words(units), className="unit"),
+                ],
                 className="target",
             ),
             _scale(setpoint, reading),

@@ -22,7 +22,10 @@ def why_sheet(advice: Advice, point: Point, zone: ZoneInfo, units: UnitSystem) -
     given = [one for one in advice.inputs if not one.assumed]
     assumed = [one for one in advice.inputs if one.assumed]
     binding = (setpoint.low_set_by, setpoint.high_set_by)
-    limits = [*binding, *(one for one in advice.limits if one.point == point and one not in binding)]
+    limits = [
+        *binding,
+        *(one for one in advice.limits if one.point == point and one not in binding),
+    ]
     return [
         html.H2(
             f"Why {target} {unit_words(units)} at {setpoint.label.lower()}",

@@ -9,7 +9,7 @@ from advisor.figures.base import degrees, whole_delta
 from advisor.figures.drawn import Verdict
 from advisor.figures.ink import COLD_MARK, HOT_MARK, UNKNOWN_MARK
 from advisor.review.result import Span
-from advisor.units import UnitSystem, shown, shown_number, shown_unit
+from advisor.units import UnitSystem, shown_number, shown_unit
 
 MARKS: dict[Verdict, str] = {
     "hot": HOT_MARK,
@@ -63,7 +63,8 @@ def age_words(age_s: float) -> str:
 
 def mass_words(tonnes: float, units: UnitSystem, decimals: int = 0) -> str:
     """A mass given in metric tonnes, such as '71 t' or '78 ton'."""
-    return shown(1000 * tonnes, "mass", units, decimals)
+    number = round(shown_number(1000 * tonnes, "mass", units), decimals) + 0.0
+    return f"{number:,.{decimals}f} {shown_unit('mass', units)}"
 
 
 def energy_words(kwh: Span, units: UnitSystem) -> str:

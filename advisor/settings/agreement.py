@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Iterator, Mapping
 
-from advisor.errors import AdvisorError, Fault, FaultyInput
+from advisor.errors import AdvisorError, Fault
 from advisor.settings.faults import fault_at, nearest
 from advisor.settings.limits import limit_schemes
 from advisor.settings.mixes import Job, JobsFile, Mix, MixesFile
@@ -214,10 +214,7 @@ def _crossed(limits: tuple[OwnLimit, ...], source: YamlSource, above: Steps) -> 
 
 
 def _unknown(name: str, table: str, source: YamlSource, steps: Steps) -> Iterator[Fault]:
-    try:
-        known = names_in(table)
-    except FaultyInput:  # the table is not written yet
-        return
+    known = names_in(table)
     if name not in known:
         yield fault_at(
             source,

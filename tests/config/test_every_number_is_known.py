@@ -1,4 +1,4 @@
-"""Every number in config/ has a unit, a source and how it is known; a table that lacks one fails."""
+"""Every number in config/ has a unit, a source and how it is known; a table without fails."""
 
 from __future__ import annotations
 

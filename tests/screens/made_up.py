@@ -103,12 +103,21 @@ def advice(at: datetime = NOW, job: str = "J-3") -> Advice:
             InputUsed("Air temperature", "9 °C", "weather of 10:00", 600.0),
             InputUsed("Wind", "5 m/s", "weather of 10:00", 600.0),
             InputUsed("Haul", "41 min ± 6 min", "job J-3"),
-            InputUsed("Drop truck to screed", "2 °C", "nobody entered it", None, True,
-                      "the usual drop through a paver"),
+            InputUsed(
+                "Drop truck to screed",
+                "2 °C",
+                "nobody entered it",
+                None,
+                True,
+                "the usual drop through a paver",
+            ),
         ),
         cautions=(
-            Caution("advice-only", "Advice only. The plant's own controls, trips and procedures "
-                    "come first; check the supplier's data sheet and the contract."),
+            Caution(
+                "advice-only",
+                "Advice only. The plant's own controls, trips and procedures "
+                "come first; check the supplier's data sheet and the contract.",
+            ),
             Caution("flash", "Keep tank 2 at least 30 °C under its flash point (262 °C)."),
         ),
         passed_over=("The coating optimum of 158 at the drum was passed over for fuel.",),
@@ -136,9 +145,7 @@ def advice(at: datetime = NOW, job: str = "J-3") -> Advice:
 
 
 def clashing(at: datetime = NOW) -> Advice:
-    contract = limit(
-        "delivery", "low", 160, "contract minimum at the paver", "contract", "160 °C"
-    )
+    contract = limit("delivery", "low", 160, "contract minimum at the paver", "contract", "160 °C")
     return replace(
         advice(at),
         setpoints=(),
@@ -249,8 +256,14 @@ class MadeUpPlant:
     def tickets(self, start: datetime, end: datetime) -> Sequence[TicketPoint]:
         count = max(int((end - start) / timedelta(minutes=12)), 0)
         return tuple(
-            TicketPoint(f"{4100 + n}", start + timedelta(minutes=12 * n), "S-10", f"T{n % 7}",
-                        20_000, 155 + n % 4)
+            TicketPoint(
+                f"{4100 + n}",
+                start + timedelta(minutes=12 * n),
+                "S-10",
+                f"T{n % 7}",
+                20_000,
+                155 + n % 4,
+            )
             for n in range(min(count, 300))
         )
 
@@ -264,15 +277,36 @@ def waste(kwh: float) -> Waste:
     )
 
 
-def excursion(day: int, hour: float, minutes: float, side: str, peak: float, cause: str,
-              evidence: str, state: str = "production", mix: str = "S-10") -> Excursion:
+def excursion(
+    day: int,
+    hour: float,
+    minutes: float,
+    side: str,
+    peak: float,
+    cause: str,
+    evidence: str,
+    state: str = "production",
+    mix: str = "S-10",
+) -> Excursion:
     start = WEEK + timedelta(days=day, hours=hour)
     tonnes = minutes * 3.1
     return Excursion(
-        "discharge", side, start, start + timedelta(minutes=minutes),  # type: ignore[arg-type]
-        minutes, tonnes, peak, peak * 0.6, 165 if side == "hot" else 151, mix, "J-3", "tank 2",
+        "discharge",
+        side,
+        start,
+        start + timedelta(minutes=minutes),  # type: ignore[arg-type]
+        minutes,
+        tonnes,
+        peak,
+        peak * 0.6,
+        165 if side == "hot" else 151,
+        mix,
+        "J-3",
+        "tank 2",
         state,  # type: ignore[arg-type]
-        waste(tonnes * peak * 0.6 * 0.31) if side == "hot" else NO_WASTE, cause, evidence,
+        waste(tonnes * peak * 0.6 * 0.31) if side == "hot" else NO_WASTE,
+        cause,
+        evidence,
     )
 
 
@@ -283,7 +317,8 @@ EXCURSIONS = (
               "the setpoint of B-20 stayed after the change to S-10 at 06:02", mix="S-10"),
     excursion(2, 13.5, 41, "hot", 8.2, "moisture fell, burner did not follow",
               "moisture entered fell from 5.6 to 4.4 % at 13:31"),
-    excursion(3, 7.2, 22, "hot", 6.4, "start-up", "first 40 min after lighting", "start-up", "B-20"),
+    excursion(3, 7.2, 22, "hot", 6.4, "start-up", "first 40 min after lighting", "start-up",
+              "B-20"),
     excursion(5, 22.5, 95, "cold", 9.3, "cold night start", "air 2 °C, first load of the shift",
               "start-up", "B-20"),
     excursion(0, 10.1, 13, "cold", 4.1, "rate rose, burner did not follow",
@@ -297,7 +332,11 @@ def cells() -> tuple[HourCell, ...]:
     for day in range(7):
         name = f"{(WEEK + timedelta(days=day, hours=2)).astimezone(ZONE):%Y-%m-%d}"
         for hour in range(24):
-            working = 6 <= hour <= 16 and day < 5 or day == 5 and hour >= 21 or day == 6 and hour < 5
+            working = (
+                (6 <= hour <= 16 and day < 5)
+                or (day == 5 and hour >= 21)
+                or (day == 6 and hour < 5)
+            )
             if not working:
                 found.append(HourCell(name, hour, 0.0, None, 0.0, 0.0))
                 continue
@@ -323,7 +362,7 @@ def review(start: datetime = WEEK, end: datetime = WEEK + timedelta(days=7)) -> 
         rows_used=9_412,
         rows_set_aside=668,
         set_aside=(
-            SetAside("stuck", "silo_1_c", 312, start + timedelta(days=2), start + timedelta(days=3)),
+            SetAside("stuck", "silo_1_c", 312, start + timedelta(2), start + timedelta(3)),
             SetAside("empty conveyor", "discharge_c", 344),
             SetAside("spike", "discharge_c", 12),
         ),

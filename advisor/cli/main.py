@@ -1,0 +1,96 @@
+"""The command line: every command is loaded only when it is asked for."""
+
+from __future__ import annotations
+
+import importlib
+import json
+import sys
+from collections.abc import Sequence
+
+import click
+
+from advisor.errors import AdvisorError, Fault, FaultyInput
+
+# Name of a command (module and function of advisor.cli) and what it answers.
+COMMANDS = {
+    "setpoints": "What to run now: low, target and high at every point, and why.",
+    "review": "Where, when and why the plant ran over or under, and what it cost.",
+    "dashboard": "The pages for operator, QC and manager, in a browser.",
+    "binder": "From laboratory readings to viscosity, window and doubt.",
+    "records": "Dated facts: bring in, write out, look up as of any moment.",
+    "check": "Whether a plant folder is sound, with everything that is wrong.",
+}
+
+
+class Commands(click.Group):
+    """The group whose commands are modules, imported one at a time."""
+
+    def list_commands(self, ctx: click.Context) -> list[str]:
+        """Names of the commands, in the order of use."""
+        return list(COMMANDS)
+
+    def get_command(self, ctx: click.Context, cmd_name: str) -> click.Command | None:
+        """The command called ``cmd_name``, or None."""
+        if cmd_name not in COMMANDS:
+            return None
+        command = getattr(importlib.import_module(f"advisor.cli.{cmd_name}"), cmd_name)
+        return command if isinstance(command, click.Command) else None
+
+    def format_commands(self, ctx: click.Context, formatter: click.HelpFormatter) -> None:
+        """Write what each command answers without loading any of them."""
+        with formatter.section("Commands"):
+            formatter.write_dl(list(COMMANDS.items()))
+
+
+@click.group(cls=Commands, context_settings={"help_option_names": ["-h", "--help"]})
+@click.version_option(package_name="mix-temperature-advisor", message="%(version)s")
+def advisor() -> None:
+    """Temperature setpoints for a hot-mix asphalt plant, with limits, reasons and cost.
+
+    \b
+    Example:
+      advisor setpoints demo_plant
+      advisor setpoints --help
+    """
+
+
+def main(arguments: Sequence[str] | None = None) -> None:
+    """Run the command in ``arguments``; end with 0, 2 for faulty input, 1 for anything else."""
+    given = list(sys.argv[1:] if arguments is None else arguments)
+    try:
+        code = advisor.main(given, prog_name="advisor", standalone_mode=False)
+    except click.ClickException as error:
+        code = _refuse_usage(error, "--json" in given)
+    except AdvisorError as error:
+        code = _refuse(error, "--json" in given)
+    except click.Abort:
+        code = 1
+    except BrokenPipeError:  # whoever read the output has seen enough
+        sys.stderr.close()
+        code = 1
+    except OSError as error:
+        problem = f"{error.strerror or error}."
+        code = _refuse(
+            AdvisorError(Fault("file", problem, file=str(error.filename or ""))), "--json" in given
+        )
+    sys.exit(code if isinstance(code, int) else 0)
+
+
+def _refuse(error: AdvisorError, as_json: bool) -> int:
+    """Print every fault, for a person to stderr or as JSON to stdout; the exit code."""
+    if as_json:
+        faults = [fault.as_dict() for fault in error.faults]
+        click.echo(json.dumps({"faults": faults}, ensure_ascii=False, indent=2))
+    else:
+        for fault in error.faults:
+            click.echo(str(fault), err=True)
+        if len(error.faults) > 1:
+            click.echo(f"{len(error.faults)} faults.", err=True)
+    return 2 if isinstance(error, FaultyInput) else 1
+
+
+def _refuse_usage(error: click.ClickException, as_json: bool) -> int:
+    if as_json:
+        return _refuse(FaultyInput(Fault("usage", error.format_message())), as_json)
+    error.show()
+    return 2
