@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from pathlib import Path
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Any
 
 import click
 
@@ -39,7 +39,7 @@ def review(plant: Path, start: str | None, end: str | None, as_json: bool) -> No
         zone = facts.folder.zone
         begin = utc_of(start, zone) if start else first
         until = utc_of(end, zone) if end else last
-        bar: click.progressbar[int] = click.progressbar(
+        bar: Any = click.progressbar(
             length=100,
             label="Working out the advice of the period",
             file=click.get_text_stream("stderr"),
