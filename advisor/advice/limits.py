@@ -107,7 +107,7 @@ def _coating(mix: Mix, binder: BinderState) -> Coating | None:
         named += f", {mix.additive.kind} lowers it by {least.text} to {most.text}"
     source = window.source + (f"; {mix.additive.source}" if mix.additive else "")
 
-    def edge(side: Side, value: object, sd: object) -> Limit:
+    def edge(side: Side, value: object, sd: object, beyond: str) -> Limit:
         return Limit(
             point="discharge",
             side=side,
@@ -117,12 +117,18 @@ def _coating(mix: Mix, binder: BinderState) -> Coating | None:
             source=source,
             how_known=window.how_known,  # type: ignore[arg-type]
             sd_k=float(np.hypot(sd, doubt)),  # type: ignore[call-overload]
+            beyond=beyond,
         )
 
     return Coating(
-        low=edge("low", window.low_c, window.low_sd_k),
+        low=edge("low", window.low_c, window.low_sd_k, "the binder is too thick to coat the stone"),
         target_c=float(window.target_c) - lowering,
-        high=edge("high", window.high_c, window.high_sd_k),
+        high=edge(
+            "high",
+            window.high_c,
+            window.high_sd_k,
+            "the binder is thinner than coating needs, hardens faster and may drain",
+        ),
         high_gives_way=not binder.modified,
     )
 

@@ -60,6 +60,14 @@ def reasons_of(situation: Situation, solution: Solution) -> tuple[Reason, ...]:
                     "tested: the numbers are provisional.",
                 )
             )
+    if situation.mix.rap:
+        found.append(
+            Reason(
+                "rap",
+                "Coating is reckoned for the new binder alone: how much of the RAP's binder mixes "
+                "with it in the plant is not known.",
+            )
+        )
     return tuple(found)
 
 
@@ -67,7 +75,9 @@ def _bound_words(setpoint: Setpoint, side: str) -> str:
     limit = setpoint.low_set_by if side == "low" else setpoint.high_set_by
     written = f" ({limit.as_written})" if limit.as_written else ""
     place = "" if limit.point == setpoint.point else f" at {_PLACE[limit.point]}"
-    return f"{limit.name}{written}{place}, {limit.source}"
+    which = "below" if side == "low" else "above"
+    beyond = f"; {which} it {limit.beyond}" if limit.beyond else ""
+    return f"{limit.name}{written}{place}, {limit.source}{beyond}"
 
 
 _PLACE = {

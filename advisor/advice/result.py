@@ -30,7 +30,8 @@ class Limit:
     """One bound on one point of the heat path, and who set it.
 
     ``value_c`` is the bound as it applies at ``point``; ``as_written`` is how its owner wrote it,
-    in the owner's unit; ``sd_k`` is the standard deviation of a computed bound, else 0.
+    in the owner's unit; ``sd_k`` is the standard deviation of a computed bound, else 0; ``beyond``
+    says what happens outside it, where that is not plain.
     """
 
     point: Point
@@ -42,6 +43,7 @@ class Limit:
     how_known: HowKnown
     as_written: str = ""
     sd_k: float = 0.0
+    beyond: str = ""
 
 
 @dataclass(frozen=True)
