@@ -33,6 +33,16 @@ class PlantLog:
     weather: pd.DataFrame
     reports: tuple[IntakeReport, ...]
 
+    def between(self, start: datetime | None, end: datetime | None) -> PlantLog:
+        """The part from ``start`` (included) to ``end`` (not included), aware times."""
+        return PlantLog(
+            _between(self.frame, start, end),
+            _between(self.tickets, start, end),
+            _between(self.arrivals, start, end),
+            _between(self.weather, start, end),
+            self.reports,
+        )
+
 
 def read_logs(
     folder: PlantFolder, start: datetime | None = None, end: datetime | None = None
@@ -47,7 +57,7 @@ def read_logs(
     for kind in SHAPES:
         frame, of_kind = read_kind(folder, kind)
         # Marked before the period is cut out: a fault is known by what is before and after it.
-        frames[kind] = _between(mark_faults(frame), start, end)
+        frames[kind] = mark_faults(frame)
         reports.extend(of_kind)
     of_log = [report for report in reports if report.kind == "plant_log"]
     if not of_log:
@@ -67,7 +77,7 @@ def read_logs(
         frames["arrivals"],
         frames["weather"],
         tuple(reports),
-    )
+    ).between(start, end)
 
 
 def read_kind(

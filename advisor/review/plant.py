@@ -14,7 +14,6 @@ from advisor.advice.situation import gather_situation
 from advisor.advice.timeline import TimelineRow, build_timeline, timeline_frame
 from advisor.errors import AdvisorError, MissingInput
 from advisor.logs import PlantLog, read_logs
-from advisor.logs.cleaning import mark_faults
 from advisor.review.causes import CauseRules
 from advisor.review.kernel import Findings, ReviewRules, review_rows, trace_rows
 from advisor.review.loads import judged_loads, load_excursions
@@ -81,13 +80,14 @@ def review_plant(
     start: datetime,
     end: datetime,
     progress: Callable[[int, int], None] | None = None,
+    log: PlantLog | None = None,
 ) -> PlantReview:
     """The plant's log from ``start`` to ``end`` against the advice that was in force.
 
-    ``progress`` is called with timeline rows done and rows in all. Raises MissingInput where there
-    is no log in the period.
+    ``progress`` is called with timeline rows done and rows in all; ``log`` is the plant's log where
+    it has been read before. Raises MissingInput where there is no log in the period.
     """
-    log = read_logs(facts.folder, start, end)
+    log = log.between(start, end) if log else read_logs(facts.folder, start, end)
     if log.frame.empty:
         zone = facts.folder.zone
         raise MissingInput.of(
@@ -98,11 +98,10 @@ def review_plant(
         )
     timeline = build_timeline(facts, start, end, progress)
     frame, rules = timeline_frame(timeline), review_rules()
-    marked = mark_faults(log.frame)
     price = heat_price(facts, timeline)
-    rows = trace_rows(marked, frame, rules)
+    rows = trace_rows(log.frame, frame, rules)
     findings = review_rows(rows, rules, price, facts.folder.plant.time_zone)
-    loads = judged_loads(mark_faults(log.tickets), mark_faults(log.arrivals), rows, frame)
+    loads = judged_loads(log.tickets, log.arrivals, rows, frame)
     excursions = [
         *findings.excursions,
         *load_excursions(loads, "load_out", rules),
