@@ -34,12 +34,12 @@ class Mix:
 
 
 MIXES = {
-    "AC32": Mix(158.0, 1),
-    "AC20R": Mix(164.0, 1, 0.20),
-    "AC14": Mix(160.0, 2),
-    "AC10W": Mix(140.0, 1),
-    "SMA10": Mix(172.0, 3),
-    "AC14P": Mix(170.0, 3),
+    "AC32": Mix(156.0, 1),
+    "AC20R": Mix(155.0, 1, 0.20),
+    "AC14": Mix(157.0, 2),
+    "AC10W": Mix(150.0, 1),
+    "SMA10": Mix(174.0, 3),
+    "AC14P": Mix(173.0, 3),
 }
 TANK_C = {1: 160.0, 2: 156.0, 3: 172.0}
 
@@ -67,7 +67,10 @@ SITES = {
 
 @dataclass(frozen=True)
 class Run:
-    """Production of one mix for one job: from and to in plant time, into which silo, how fast."""
+    """Production of one mix for one job: from and to in plant time, into which silo, how fast.
+
+    ``setpoint_c`` [C] is what the operator chose where it was not the mix's usual one.
+    """
 
     start: str
     end: str
@@ -75,6 +78,7 @@ class Run:
     mix: str
     silo: int
     rate_th: float
+    setpoint_c: float | None = None
 
 
 RUNS = (
@@ -87,13 +91,13 @@ RUNS = (
     Run("2026-10-21 05:30", "2026-10-21 10:20", "J01", "AC20R", 1, 190),
     Run("2026-10-21 10:20", "2026-10-21 12:00", "J05", "AC10W", 2, 180),
     Run("2026-10-21 12:40", "2026-10-21 15:20", "J06", "AC14P", 1, 150),
-    Run("2026-10-22 05:40", "2026-10-22 08:40", "J02", "AC14", 2, 180),
+    Run("2026-10-22 05:40", "2026-10-22 08:40", "J02", "AC14", 2, 180, 159.0),
     Run("2026-10-22 08:40", "2026-10-22 12:20", "J01", "AC20R", 1, 200),
     Run("2026-10-22 12:50", "2026-10-22 15:30", "J04", "SMA10", 2, 160),
     Run("2026-10-23 05:40", "2026-10-23 08:50", "J01", "AC20R", 1, 190),
-    Run("2026-10-23 08:50", "2026-10-23 12:10", "J02", "AC14", 2, 180),
+    Run("2026-10-23 08:50", "2026-10-23 12:10", "J02", "AC14", 2, 180, 161.0),
     Run("2026-10-23 12:50", "2026-10-23 15:10", "J05", "AC10W", 1, 180),
-    Run("2026-10-24 20:00", "2026-10-25 00:30", "J07", "AC14", 1, 170),
+    Run("2026-10-24 20:00", "2026-10-25 00:30", "J07", "AC14", 1, 170, 171.0),
     Run("2026-10-25 00:30", "2026-10-25 04:00", "J04", "SMA10", 2, 150),
 )
 # Mix kept overnight for the first trucks of the next day: job, kg, until.
@@ -106,7 +110,8 @@ HALTS = (
     ("2026-10-24 22:05", "2026-10-24 22:25", False),
 )
 
-SAFE_UNTIL_HOUR, SAFE_K = 9, 8.0  # the habit of adding degrees to be safe before nine
+# The habit of adding degrees to be safe before nine, with one mix.
+SAFE_MIX, SAFE_UNTIL_HOUR, SAFE_K = "AC20R", 9, 9.0
 HOT_HOUR = ("2026-10-22 10:05", "2026-10-22 11:10", 12.0)  # moisture fell, the burner did not
 COLD_START_K, COLD_NIGHT_K = 22.0, 48.0  # below the setpoint at the first mix, by day and Sat 20:00
 CONTROL_SD_K, CONTROL_RHO = 2.5, 0.75  # scatter of the discharge, minute to minute

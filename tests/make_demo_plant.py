@@ -117,8 +117,10 @@ def drift(value: float, goal: float, minutes: float, of_min: float) -> float:
 
 def setpoint_c(at: datetime, run: demo.Run) -> float:
     """What the operator aims at, with the habit of the early morning."""
-    early = 4 <= local(at).hour < demo.SAFE_UNTIL_HOUR
-    return demo.MIXES[run.mix].setpoint_c + (demo.SAFE_K if early else 0.0)
+    early = run.mix == demo.SAFE_MIX and 4 <= local(at).hour < demo.SAFE_UNTIL_HOUR
+    usual = demo.MIXES[run.mix].setpoint_c
+    chosen = usual if run.setpoint_c is None else run.setpoint_c
+    return chosen + (demo.SAFE_K if early else 0.0)
 
 
 def step_discharge(plant: Plant, at: datetime, noise: Noise) -> tuple[demo.Run | None, bool]:
