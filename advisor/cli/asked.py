@@ -37,3 +37,11 @@ def json_option(command: Callable[..., Any]) -> Callable[..., Any]:
     """Add the option --json, as ``as_json``, to ``command``."""
     option = click.option("--json", "as_json", is_flag=True, help="Print JSON, for programs.")
     return option(command)
+
+
+def us_option(command: Callable[..., Any]) -> Callable[..., Any]:
+    """Add the option --us, as ``units`` ('si' or 'us'), to ``command``."""
+    option = click.option(
+        "--us", "units", flag_value="us", default="si", help="Show US customary units."
+    )
+    return option(command)

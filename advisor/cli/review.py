@@ -2,25 +2,33 @@
 
 from __future__ import annotations
 
+import sys
 from pathlib import Path
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING
 
 import click
 
-from advisor.cli.asked import json_option, plant_argument
+from advisor.cli.asked import json_option, plant_argument, us_option
 
 if TYPE_CHECKING:
     from zoneinfo import ZoneInfo
 
-    from advisor.review.result import Review, Span
+    from advisor.review.result import Excursion, Review, Span
+    from advisor.units import UnitSystem
+
+_WIDE = 96  # of the column that says why
 
 
 @click.command()
 @plant_argument
 @click.option("--from", "start", metavar="TIME", help="Plant time; else the log's first row.")
 @click.option("--to", "end", metavar="TIME", help="Plant time; else the log's last row.")
+@click.option("--loads", "loads", is_flag=True, help="Also list the loads outside their window.")
+@us_option
 @json_option
-def review(plant: Path, start: str | None, end: str | None, as_json: bool) -> None:
+def review(
+    plant: Path, start: str | None, end: str | None, loads: bool, units: UnitSystem, as_json: bool
+) -> None:
     """Compare the log of PLANT with what was advised: where hot, where cold, why, what it cost.
 
     \b
@@ -30,21 +38,27 @@ def review(plant: Path, start: str | None, end: str | None, as_json: bool) -> No
     """
     from advisor.advice.open_plant import open_plant
     from advisor.cli.output import print_json
+    from advisor.errors import FaultyInput
     from advisor.review.plant import log_span, review_plant
     from advisor.settings.moments import utc_of
 
-    facts = open_plant(plant)
+    facts = open_plant(plant, latest_only=True)
     with facts.records:
         first, last = log_span(facts)
         zone = facts.folder.zone
         begin = utc_of(start, zone) if start else first
         until = utc_of(end, zone) if end else last
-        bar: Any = click.progressbar(
-            length=100,
-            label="Working out the advice of the period",
-            file=click.get_text_stream("stderr"),
-        )
-        with bar:
+        if until <= begin:
+            raise FaultyInput.of(
+                "period-empty",
+                f"The period ends at {until.astimezone(zone):%Y-%m-%d %H:%M}, not after its begin.",
+                f"Give a time after {begin.astimezone(zone):%Y-%m-%d %H:%M} with --to.",
+                field="--to",
+                value=end or "",
+            )
+        with click.progressbar(
+            length=100, label="Working out the advice of the period", file=sys.stderr
+        ) as bar:
 
             def progress(done: int, of: int) -> None:
                 bar.update(round(100 * done / max(of, 1)) - bar.pos)
@@ -53,26 +67,32 @@ def review(plant: Path, start: str | None, end: str | None, as_json: bool) -> No
     if as_json:
         print_json(found)
         return
-    _print(found, zone)
+    _print(found, zone, units, loads)
 
 
-def _print(found: Review, zone: ZoneInfo) -> None:
+def _print(found: Review, zone: ZoneInfo, units: UnitSystem, loads: bool) -> None:
     from advisor.cli.output import print_table
+    from advisor.units import shown
 
     click.echo(
         f"{found.plant}, {found.start.astimezone(zone):%a %d %b %H:%M} to "
         f"{found.end.astimezone(zone):%a %d %b %H:%M %Y}\n\n{found.sentence}\n"
     )
+
+    def mass(tonnes: float) -> str:
+        return shown(1000.0 * tonnes, "mass", units, decimals=0)
+
     print_table(
-        ("mix", "made", "inside", "hot", "cold", "mean", "fuel too much"),
+        ("mix", "made", "inside", "hot", "cold", "no advice", "mean", "fuel too much"),
         [
             (
                 one.mix,
-                f"{one.tonnes:.0f} t",
-                f"{one.tonnes - one.hot_tonnes - one.cold_tonnes:.0f} t",
-                f"{one.hot_tonnes:.0f} t",
-                f"{one.cold_tonnes:.0f} t",
-                f"{one.mean_c:.0f} °C",
+                mass(one.tonnes),
+                mass(one.inside_tonnes),
+                mass(one.hot_tonnes),
+                mass(one.cold_tonnes),
+                mass(one.no_advice_tonnes),
+                shown(one.mean_c, "temperature", units),
                 f"{_range(one.waste.fuel_kwh)} kWh",
             )
             for one in found.mixes
@@ -80,33 +100,50 @@ def _print(found: Review, zone: ZoneInfo) -> None:
     )
     click.echo(
         f"\nStart-ups and mix changes, apart: {_range(found.start_up_waste.fuel_kwh)} kWh, "
-        f"{_range(found.start_up_waste.money)} {found.currency}."
+        f"{_range(found.start_up_waste.money)} {found.currency}.\n"
     )
-    click.echo(f"Without advice in force: {found.no_advice_tonnes:.0f} t.\n")
+    at_drum = [one for one in found.excursions if one.point == "discharge"]
+    of_loads = [one for one in found.excursions if one.point != "discharge"]
+    if at_drum:
+        click.echo("Outside the window at the drum:")
+        _print_excursions(at_drum, zone, units)
+    if of_loads and loads:
+        click.echo("\nLoads outside their window:")
+        _print_excursions(of_loads, zone, units)
+    elif of_loads:
+        click.echo(f"\nLoads outside their window: {len(of_loads)} stretches; --loads lists them.")
+    click.echo(
+        f"\nFiles of the log: {found.rows_read} rows read, {found.rows_used} used, "
+        f"{found.rows_set_aside} set aside; in this period {found.rows_in_period} rows."
+    )
+    for one in found.set_aside:
+        click.echo(f"  {one.signal}: {one.reason}, {one.count}")
+    for caution in found.cautions:
+        click.echo(f"\n{caution}")
+
+
+def _print_excursions(found: list[Excursion], zone: ZoneInfo, units: UnitSystem) -> None:
+    import textwrap
+
+    from advisor.cli.output import print_table
+    from advisor.units import shown
+
     print_table(
-        ("since", "where", "", "min", "t", "peak", "mix", "state", "likely cause"),
+        ("since", "where", "", "min", "mass", "peak", "mix", "likely cause"),
         [
             (
                 f"{one.start.astimezone(zone):%a %d %H:%M}",
                 one.point.replace("_", "-"),
                 one.side,
                 f"{one.minutes:.0f}",
-                f"{one.tonnes:.0f}",
-                f"{one.peak_k:.0f} K",
+                shown(1000.0 * one.tonnes, "mass", units, decimals=0),
+                shown(one.peak_k, "temperature_delta", units, decimals=0),
                 one.mix,
-                one.state,
-                f"{one.cause}: {one.evidence}",
+                textwrap.shorten(f"{one.cause}: {one.evidence}", _WIDE, placeholder=" ..."),
             )
-            for one in found.excursions
+            for one in found
         ],
     )
-    click.echo(
-        f"\n{found.rows_read} rows read, {found.rows_used} used, {found.rows_set_aside} set aside."
-    )
-    for one in found.set_aside:
-        click.echo(f"  {one.signal}: {one.reason}, {one.count}")
-    for caution in found.cautions:
-        click.echo(f"\n{caution}")
 
 
 def _range(span: Span) -> str:

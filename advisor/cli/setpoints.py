@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING
 
 import click
 
-from advisor.cli.asked import json_option, plant_argument
+from advisor.cli.asked import json_option, plant_argument, us_option
 
 if TYPE_CHECKING:
     from zoneinfo import ZoneInfo
@@ -21,10 +21,10 @@ if TYPE_CHECKING:
 @click.option("--at", "at", metavar="TIME", help="Plant time, such as '2026-10-23 10:10'.")
 @click.option("--job", "job", metavar="JOB", help="Code of a job; else the one that runs.")
 @click.option("--tank", "tank", metavar="TANK", help="Binder tank; else that of the order sheet.")
-@click.option("--us", "us", is_flag=True, help="Show US customary units.")
+@us_option
 @json_option
 def setpoints(
-    plant: Path, at: str | None, job: str | None, tank: str | None, us: bool, as_json: bool
+    plant: Path, at: str | None, job: str | None, tank: str | None, units: UnitSystem, as_json: bool
 ) -> None:
     """Advise temperatures for PLANT: low, target and high at every point, and why.
 
@@ -48,7 +48,7 @@ def setpoints(
     if as_json:
         print_json(advice)
         return
-    _print(advice, facts.folder.zone, "us" if us else "si")
+    _print(advice, facts.folder.zone, units)
 
 
 def _print(advice: Advice, zone: ZoneInfo, units: UnitSystem) -> None:

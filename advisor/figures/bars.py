@@ -13,7 +13,7 @@ from advisor.review.result import NO_WASTE, Excursion, Review, Waste
 from advisor.units import UnitSystem, shown_number, shown_unit
 
 _ROW_PX = 46
-_MARGIN = (8, 86, 2, 30)
+_MARGIN = (8, 124, 2, 30)
 
 
 @dataclass(frozen=True)
@@ -29,9 +29,14 @@ class CauseShare:
 
 
 def cause_shares(excursions: Sequence[Excursion]) -> tuple[CauseShare, ...]:
-    """Excursions summed by likely cause, the most fuel first, then the most tonnes."""
+    """Excursions at the drum summed by likely cause, the most fuel first, then the most tonnes.
+
+    Those at load-out and paver are the same tonnes once more and are left out.
+    """
     found: dict[str, list[Excursion]] = {}
     for one in excursions:
+        if one.point not in ("discharge", "hot_aggregate"):
+            continue
         found.setdefault(one.cause or "no cause found", []).append(one)
     shares = [
         CauseShare(
@@ -55,7 +60,7 @@ def cause_shares(excursions: Sequence[Excursion]) -> tuple[CauseShare, ...]:
 def cause_bars(
     excursions: Sequence[Excursion], units: UnitSystem = "si", ink: Ink = LIGHT
 ) -> go.Figure:
-    """Figure of tonnes outside the window by likely cause, the most fuel on top.
+    """Figure of tonnes outside the window at the drum by likely cause, the most fuel on top.
 
     Parameters
     ----------
@@ -97,7 +102,7 @@ def mix_bars(review: Review, units: UnitSystem = "si", ink: Ink = LIGHT) -> go.F
         [one.mix for one in mixes],
         [one.hot_tonnes for one in mixes],
         [one.cold_tonnes for one in mixes],
-        [max(one.tonnes - one.hot_tonnes - one.cold_tonnes, 0.0) for one in mixes],
+        [one.inside_tonnes for one in mixes],
         units,
         ink,
     )

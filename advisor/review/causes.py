@@ -13,15 +13,20 @@ from advisor.review.result import State
 
 @dataclass(frozen=True)
 class CauseRules:
-    """How far back to look and what counts as a change; values come from config/review.yaml."""
+    """How far back to look and what counts as a change; values come from config/review.yaml.
+
+    ``scatter_k`` is the standard deviation of the plant's own control about its setpoint.
+    """
 
     look_back_s: float
     rate_change: float
     heat_change: float
     window_change_k: float
+    scatter_k: float
 
 
 _LEAST_ROWS = 10  # fewer rows before an excursion say nothing about what changed
+_BEYOND_SCATTER = 3.0  # standard deviations that control alone does not reach
 
 
 @dataclass(frozen=True)
@@ -38,27 +43,31 @@ def likely_cause(
     """The cause that best fits what changed at the start of rows ``start:end``.
 
     ``rows`` has time_s [s], discharge_c and window_c (the bound crossed) [C], rate_kgs [kg/s],
-    burner_load [1] and over_k, missing where no mix is judged.
+    burner_load [1], state, and over_k, missing where no mix is judged.
     """
-    if state == "start-up":
-        return Cause("start-up", "The plant had just started; the discharge had not settled.")
+    time_s = rows["time_s"].to_numpy()
+    # A dryer starts cold: what began in a start-up and stayed cold is the start-up still.
+    began = str(rows["state"].iloc[start])
+    if state == "start-up" or (side == "cold" and began == "start-up"):
+        minutes = (time_s[end - 1] - time_s[start]) / 60.0
+        return Cause("start-up", f"It took {minutes:.0f} min after the start to reach the window.")
     if state == "mix change":
         return Cause("mix change", "The mix had just changed; the discharge had not settled.")
-    time_s = rows["time_s"].to_numpy()
     since = time_s[start]
-    back = (time_s >= since - rules.look_back_s) & (time_s < since) & _making(rows)
+    back = (time_s >= since - rules.look_back_s) & (time_s < since) & _settled(rows)
     during = np.zeros(len(rows), bool)
     during[start:end] = True
+    word = "above" if side == "hot" else "below"
     if np.count_nonzero(back) < _LEAST_ROWS:
         return Cause(
             "setpoint",
-            "It was so from the first minutes of this run: the discharge was set "
-            f"{'above' if side == 'hot' else 'below'} the window.",
+            f"It was so from the first minutes of this run: the discharge was set {word} the "
+            "window.",
         )
     before, now = _means(rows[back]), _means(rows[during])
+    outward = 1.0 if side == "hot" else -1.0
     window_shift = now["window_c"] - before["window_c"]
-    toward = -1.0 if side == "hot" else 1.0
-    if toward * window_shift > rules.window_change_k:
+    if -outward * window_shift > rules.window_change_k:
         return Cause(
             "setpoint not changed",
             f"The window moved by {window_shift:+.0f} K and the discharge did not follow.",
@@ -71,17 +80,33 @@ def likely_cause(
         return Cause(
             "burner", f"The burner gave {heat_shift:+.0%} heat per tonne against the time before."
         )
-    if side == "hot" and abs(heat_shift) <= rules.heat_change:
+    moved = outward * (now["discharge_c"] - before["discharge_c"])
+    if moved > _BEYOND_SCATTER * rules.scatter_k and abs(heat_shift) <= rules.heat_change:
+        went, stone = ("hotter", "drier") if side == "hot" else ("colder", "wetter")
         return Cause(
-            "moisture fell",
-            f"Rate and burner stayed ({heat_shift:+.0%} heat per tonne) while the mix got hotter, "
-            "as drier stone would do.",
+            "moisture fell" if side == "hot" else "moisture rose",
+            f"Rate and burner stayed ({heat_shift:+.0%} heat per tonne) while the mix got "
+            f"{moved:.0f} K {went}, as {stone} stone would do.",
+        )
+    near = outward * (before["window_c"] - before["discharge_c"])
+    if near < rules.scatter_k:
+        place = f"{abs(near):.0f} K {'inside' if near > 0 else 'outside'}"
+        return Cause(
+            "setpoint",
+            f"It already ran {place} of this edge before; control scatters by "
+            f"{rules.scatter_k:.1f} K.",
+        )
+    if moved <= _BEYOND_SCATTER * rules.scatter_k and time_s[end - 1] - since < rules.look_back_s:
+        return Cause(
+            "control scatter",
+            f"A short swing of {moved:.0f} K; the plant's control scatters by "
+            f"{rules.scatter_k:.1f} K.",
         )
     return Cause("not known", "Rate, burner and window did not change enough to explain it.")
 
 
-def _making(rows: pd.DataFrame) -> NDArray[np.bool_]:
-    return np.asarray(rows["over_k"].notna(), bool)
+def _settled(rows: pd.DataFrame) -> NDArray[np.bool_]:
+    return np.asarray(rows["over_k"].notna() & (rows["state"] == "production"), bool)
 
 
 def _heat_per_mass(means: dict[str, float]) -> float:

@@ -150,8 +150,11 @@ def _silo_out_kgs(rows: pd.DataFrame, time_s: Floats, rate: Floats) -> Floats:
 def find_excursions(
     rows: pd.DataFrame, rules: ReviewRules, price: HeatPrice
 ) -> tuple[Excursion, ...]:
-    """Excursions of the discharge in ``rows`` as trace_rows returns them, oldest first."""
-    found = []
+    """Excursions of the discharge in ``rows`` as trace_rows returns them, oldest first.
+
+    What never gets further out than the dead band is counted in tonnes, not told one by one.
+    """
+    found: list[Excursion] = []
     time_s = rows["time_s"].to_numpy()
     for side, column, bound in (
         ("hot", "over_k", "discharge_high_c"),
@@ -160,8 +163,11 @@ def find_excursions(
         over = rows[column].to_numpy(float)
         runs = outside_runs(time_s, over, rules.dead_band_k, rules.on_delay_s, rules.longest_gap_s)
         seen = rows.assign(window_c=rows[bound])
-        for start, end in zip(*runs, strict=True):
-            found.append(_excursion(seen, start, end, side, over, rules, price))
+        found += [
+            _excursion(seen, start, end, side, over, rules, price)
+            for start, end in zip(*runs, strict=True)
+            if np.nanmax(over[start:end]) >= rules.dead_band_k
+        ]
     return tuple(sorted(found, key=lambda one: one.start))
 
 
@@ -294,6 +300,7 @@ def _mix_shares(rows: pd.DataFrame, price: HeatPrice) -> tuple[MixShare, ...]:
                 tonnes=float(tonnes.sum()),
                 hot_tonnes=float(tonnes[part["hot"]].sum()),
                 cold_tonnes=float(tonnes[part["cold"]].sum()),
+                no_advice_tonnes=float(tonnes[part["over_k"].isna()].sum()),
                 mean_c=mean,
                 waste=waste_of(float(part["excess_tk"].sum()), price),
             )

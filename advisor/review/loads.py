@@ -17,6 +17,8 @@ LoadPoint = Literal["load_out", "delivery"]
 
 _SIGNAL: dict[LoadPoint, str] = {"load_out": "load_out_c", "delivery": "delivery_c"}
 _LONGEST_BETWEEN_S = 3600.0  # loads further apart are not one stretch
+_MAKING_S = 600.0  # about the time it takes to make one truck load
+_LONG_IN_SILO_S = 2 * 3600.0
 
 
 def make_times(tickets: pd.DataFrame, rows: pd.DataFrame) -> pd.Series:
@@ -49,11 +51,16 @@ def make_times(tickets: pd.DataFrame, rows: pd.DataFrame) -> pd.Series:
 def judged_loads(
     tickets: pd.DataFrame, arrivals: pd.DataFrame, rows: pd.DataFrame, timeline: pd.DataFrame
 ) -> pd.DataFrame:
-    """Every ticket with when its mix was made, its arrival, and the windows then in force."""
+    """Every ticket with when its mix was made, its arrival, and the windows then in force.
+
+    ``made_over_k`` and ``made_under_k`` [K] are how far outside its window it left the drum.
+    """
     loads = tickets.reset_index(drop=True)
     loads = loads.assign(made=make_times(loads, rows))
     joined = join_timeline(loads, timeline, at="made")
     loads = pd.concat([loads, joined.drop(columns=["job"])], axis=1)
+    drum = _mean_of_making(loads, rows)
+    loads = loads.assign(made_over_k=drum["over_k"], made_under_k=drum["under_k"])
     if len(arrivals):
         arrived = arrivals.rename(columns={"time": "arrived"})
         columns = [
@@ -61,6 +68,24 @@ def judged_loads(
         ]
         loads = loads.merge(arrived[columns], on="ticket", how="left")
     return loads
+
+
+def _mean_of_making(loads: pd.DataFrame, rows: pd.DataFrame) -> pd.DataFrame:
+    """Mean distance from the window over the minutes in which the mix of each load was made."""
+    time_s = rows["time_s"].to_numpy()
+    end_s = loads["made"].astype("int64").to_numpy() / 1e6
+    found = {}
+    for name in ("over_k", "under_k"):
+        values = rows[name].to_numpy(float)
+        known = np.isfinite(values)
+        total = np.concatenate(([0.0], np.cumsum(np.where(known, values, 0.0))))
+        count = np.concatenate(([0], np.cumsum(known)))
+        first = np.searchsorted(time_s, end_s - _MAKING_S)
+        last = np.searchsorted(time_s, end_s, side="right")
+        several = np.maximum(count[last] - count[first], 1)
+        mean = (total[last] - total[first]) / several
+        found[name] = np.where(count[last] > count[first], mean, np.nan)
+    return pd.DataFrame(found, index=loads.index)
 
 
 def load_excursions(loads: pd.DataFrame, point: LoadPoint, rules: ReviewRules) -> list[Excursion]:
@@ -82,6 +107,7 @@ def load_excursions(loads: pd.DataFrame, point: LoadPoint, rules: ReviewRules) -
             found += [
                 _excursion(one.iloc[start:end], over[start:end], point, side, at)
                 for start, end in zip(*runs, strict=True)
+                if np.nanmax(over[start:end]) >= rules.dead_band_k
             ]
     return sorted(found, key=lambda one: one.start)
 
@@ -91,7 +117,7 @@ def _excursion(part: pd.DataFrame, over: Floats, point: LoadPoint, side: str, at
     beyond = np.maximum(np.nan_to_num(over), 0.0)
     bound = part[f"{point}_{'high' if side == 'hot' else 'low'}_c"].iloc[0]
     first, last = part[at].iloc[0], part[at].iloc[-1]
-    count = len(part)
+    cause, evidence = _cause(part, point, side)
     return Excursion(
         point=point,
         side=side,  # type: ignore[arg-type]
@@ -107,8 +133,28 @@ def _excursion(part: pd.DataFrame, over: Floats, point: LoadPoint, side: str, at
         tank=str(part["tank"].iloc[0]),
         state="production",
         waste=NO_WASTE,
-        cause="load",
-        evidence=f"{count} load{'s' if count > 1 else ''}: "
-        + ", ".join(str(one) for one in part["ticket"].head(6))
-        + (" ..." if count > 6 else ""),
+        cause=cause,
+        evidence=evidence,
     )
+
+
+def _cause(part: pd.DataFrame, point: LoadPoint, side: str) -> tuple[str, str]:
+    """Likely cause of loads outside their window, and what supports it."""
+    count = len(part)
+    tickets = ", ".join(str(one) for one in part["ticket"].head(6)) + (" ..." if count > 6 else "")
+    loads = f"{count} load{'s' if count > 1 else ''} ({tickets})"
+    made = part["made_over_k" if side == "hot" else "made_under_k"].to_numpy(float)
+    so_made = int(np.count_nonzero(made > 0.0))
+    if so_made * 2 >= count:
+        word = "hotter" if side == "hot" else "colder"
+        return f"made {side}", f"{loads}: {so_made} left the drum {word} than its window."
+    rested_s = (part["time"] - part["made"]).dt.total_seconds().to_numpy(float)
+    if side == "cold" and np.median(rested_s) > _LONG_IN_SILO_S:
+        return "long in the silo", f"{loads}: {np.median(rested_s) / 3600.0:.1f} h in the silo."
+    if point == "load_out":
+        told = "the drum was inside its window; compare the load-out thermometer with a probe."
+        return "silo or thermometer", f"{loads}: {told}"
+    road_min = (part["arrived"] - part["time"]).dt.total_seconds().median() / 60.0
+    keeps = "more" if side == "hot" else "less"
+    told = f"{road_min:.0f} min on the road; the truck keeps {keeps} heat than reckoned, or the"
+    return "haul or thermometer", f"{loads}: made inside, {told} thermometer is off."

@@ -35,8 +35,8 @@ class PlantReview:
     timeline: tuple[TimelineRow, ...]
 
 
-def review_rules() -> ReviewRules:
-    """The rules of config/review.yaml."""
+def review_rules(scatter_k: float) -> ReviewRules:
+    """The rules of config/review.yaml, for a plant whose control scatters by ``scatter_k`` [K]."""
     table = load_table("review")
     excursion, states, cause = table.row("excursion"), table.row("states"), table.row("cause")
     return ReviewRules(
@@ -54,7 +54,11 @@ def review_rules() -> ReviewRules:
             empty_out_s=states["empty_out"],
         ),
         causes=CauseRules(
-            cause["look_back"], cause["rate_change"], cause["heat_change"], cause["window_change"]
+            look_back_s=cause["look_back"],
+            rate_change=cause["rate_change"],
+            heat_change=cause["heat_change"],
+            window_change_k=cause["window_change"],
+            scatter_k=scatter_k,
         ),
     )
 
@@ -97,7 +101,8 @@ def review_plant(
             "Choose another period or bring in the exports.",
         )
     timeline = build_timeline(facts, start, end, progress)
-    frame, rules = timeline_frame(timeline), review_rules()
+    frame = timeline_frame(timeline)
+    rules = review_rules(float(facts.folder.plant.control_scatter))
     price = heat_price(facts, timeline)
     rows = trace_rows(log.frame, frame, rules)
     findings = review_rows(rows, rules, price, facts.folder.plant.time_zone)
@@ -156,6 +161,7 @@ def _assembled(
         rows_read=sum(report.rows_read for report in of_log),
         rows_used=sum(report.rows_used for report in of_log),
         rows_set_aside=sum(report.rows_read - report.rows_used for report in of_log),
+        rows_in_period=len(log.frame),
         set_aside=(*dropped, *findings.set_aside),
         states=findings.states,
         cells=findings.cells,

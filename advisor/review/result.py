@@ -107,14 +107,20 @@ class StateShare:
 
 @dataclass(frozen=True)
 class MixShare:
-    """How one mix ran: tonnes inside, hot and cold, and the waste."""
+    """How one mix ran: tonnes made, hot, cold and without advice, and the waste."""
 
     mix: str
     tonnes: float
     hot_tonnes: float
     cold_tonnes: float
+    no_advice_tonnes: float
     mean_c: float
     waste: Waste
+
+    @property
+    def inside_tonnes(self) -> float:
+        """Tonnes made inside the window."""
+        return max(self.tonnes - self.hot_tonnes - self.cold_tonnes - self.no_advice_tonnes, 0.0)
 
 
 @dataclass(frozen=True)
@@ -130,7 +136,11 @@ class SetAside:
 
 @dataclass(frozen=True)
 class Review:
-    """A plant's period against the advice that was in force."""
+    """A plant's period against the advice that was in force.
+
+    ``rows_read``, ``rows_used`` and ``rows_set_aside`` count the log's files, ``rows_in_period``
+    the part of them that was looked at.
+    """
 
     plant: str
     start: datetime
@@ -139,6 +149,7 @@ class Review:
     rows_read: int
     rows_used: int
     rows_set_aside: int
+    rows_in_period: int
     set_aside: tuple[SetAside, ...]
     states: tuple[StateShare, ...]
     cells: tuple[HourCell, ...]

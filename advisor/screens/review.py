@@ -100,7 +100,7 @@ def layout(source: Source, search: str | None) -> Any:
                 [html.H2("Made and wasted"), html.Div(id=id_of(PAGE, "summary"))],
                 className="sheet summary",
             ),
-            _figure("Likely causes, tonnes outside", "causes"),
+            _figure("Likely causes, tonnes outside at the drum", "causes"),
             _figure("By mix over the whole period", "mixes"),
             html.Section(
                 [

@@ -361,6 +361,7 @@ def review(start: datetime = WEEK, end: datetime = WEEK + timedelta(days=7)) -> 
         rows_read=10_080,
         rows_used=9_412,
         rows_set_aside=668,
+        rows_in_period=9_412,
         set_aside=(
             SetAside("stuck", "silo_1_c", 312, start + timedelta(2), start + timedelta(3)),
             SetAside("empty conveyor", "discharge_c", 344),
@@ -375,9 +376,9 @@ def review(start: datetime = WEEK, end: datetime = WEEK + timedelta(days=7)) -> 
         ),
         cells=cells(),
         mixes=(
-            MixShare("S-10", 6_100, 610, 40, 157.9, waste(900)),
-            MixShare("B-20", 3_400, 120, 300, 158.8, waste(150)),
-            MixShare("S-10 warm", 1_050, 30, 0, 138.0, waste(20)),
+            MixShare("S-10", 6_100, 610, 40, 250, 157.9, waste(900)),
+            MixShare("B-20", 3_400, 120, 300, 0, 158.8, waste(150)),
+            MixShare("S-10 warm", 1_050, 30, 0, 0, 138.0, waste(20)),
         ),
         excursions=inside,
         tonnes=10_550,
