@@ -4,15 +4,15 @@ from __future__ import annotations
 
 from datetime import UTC, timedelta
 
-import demo_schedule as schedule
 import numpy as np
 import pytest
-from demo_schedule import moment
-from truth.known import faults, minutes, truth
 
+import demo_schedule as schedule
 from advisor.errors import MissingInput
 from advisor.logs import read_logs
 from advisor.review.plant import log_span, review_plant
+from demo_schedule import moment
+from truth.known import faults, minutes, truth
 
 
 @pytest.fixture(scope="module")
@@ -26,10 +26,7 @@ def at_drum(week, side, start, end):
     return [
         one
         for one in week.review.excursions
-        if one.point == "discharge"
-        and one.side == side
-        and one.start < until
-        and one.end > begin
+        if one.point == "discharge" and one.side == side and one.start < until and one.end > begin
     ]
 
 
