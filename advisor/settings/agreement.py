@@ -36,6 +36,8 @@ def disagreements(
         yield from _of_jobs(jobs.jobs, sources["jobs.yaml"], mix_codes)
     if signals:
         yield from _of_signals(signals, sources["signals.yaml"])
+    if plant and signals:
+        yield from _unmapped(plant, signals, sources["plant.yaml"])
 
 
 def _of_plant(plant: Plant, source: YamlSource) -> Iterator[Fault]:
@@ -180,6 +182,22 @@ def _of_signals(signals: Signals, source: YamlSource) -> Iterator[Fault]:
                     "Keep one column for each signal.",
                 )
             seen[column.signal] = heading
+
+
+def _unmapped(plant: Plant, signals: Signals, source: YamlSource) -> Iterator[Fault]:
+    """Signals that silos name and no export brings."""
+    brought = {column.signal for each in signals.sources for column in each.columns.values()}
+    for at, silo in enumerate(plant.silos):
+        for key in ("temperature_signal", "content_signal"):
+            signal = getattr(silo, key)
+            if signal and signal not in brought:
+                yield fault_at(
+                    source,
+                    ("silos", at, key),
+                    "no-column",
+                    f"No column in signals.yaml brings '{signal}'.",
+                    f"Map it there, or leave out '{key}'. {nearest(signal, sorted(brought))}",
+                )
 
 
 def _twice(names: Iterable[str], source: YamlSource, above: Steps, key: str) -> Iterator[Fault]:
