@@ -74,7 +74,9 @@ def _advice(situation: Situation, path: PathDraws, draws: Draws, brief: bool) ->
     folder = situation.facts.folder
     binder = situation.binder
     assert binder is not None  # noqa: S101 - asked for only where nothing is missing
-    limits = collect_limits(folder, situation.mix, situation.job, binder, path)
+    limits = collect_limits(
+        folder, situation.mix, situation.job, binder, path, situation.facts.units
+    )
     scatter = scatter_k(situation, draws)
     found = solve(limits.path, limits.coating, path.legs, scatter, float(folder.plant.confidence))
     base = _frame(situation, limits, found)

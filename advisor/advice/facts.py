@@ -13,6 +13,7 @@ from numpy.typing import NDArray
 from advisor.records import Entry, Records
 from advisor.settings.folder import PlantFolder
 from advisor.settings.tables import load_table
+from advisor.units import UnitSystem
 
 if TYPE_CHECKING:
     import pandas as pd
@@ -57,7 +58,7 @@ class PlantFacts:
 
     ``known_at`` limits records to what was recorded by then; None means everything. ``weather``
     and ``log`` are frames as the logs room returns them, the log with its marks; None where the
-    plant has none.
+    plant has none. ``units`` are those of the sentences.
     """
 
     folder: PlantFolder
@@ -65,6 +66,7 @@ class PlantFacts:
     weather: pd.DataFrame | None = None
     log: pd.DataFrame | None = None
     known_at: datetime | None = None
+    units: UnitSystem = "si"
 
     def held(self, kind: str, subject: str, at: datetime) -> Entry | None:
         """The fact of ``kind`` about ``subject`` in force ``at``, as known."""

@@ -16,6 +16,7 @@ from advisor.settings.folder import PlantFolder
 from advisor.settings.limits import PublishedLimit, published_limits
 from advisor.settings.mixes import Job, Mix
 from advisor.settings.plant import OwnLimit
+from advisor.units import UnitSystem, shown
 
 Floats = NDArray[np.float64]
 Drawn = tuple[Limit, Floats | float]
@@ -38,9 +39,14 @@ class CollectedLimits:
 
 
 def collect_limits(
-    folder: PlantFolder, mix: Mix, job: Job, binder: BinderState, path: PathDraws
+    folder: PlantFolder,
+    mix: Mix,
+    job: Job,
+    binder: BinderState,
+    path: PathDraws,
+    units: UnitSystem = "si",
 ) -> CollectedLimits:
-    """All bounds for ``mix`` made from ``binder`` for ``job``."""
+    """All bounds for ``mix`` made from ``binder`` for ``job``, named in ``units``."""
     own = [_entered(one) for one in (*folder.plant.house_limits, *mix.limits, *job.limits)]
     spoken = {(one.point, one.side) for one in own if one.authority == "contract"}
     schemes = folder.plant.published_limits
@@ -54,7 +60,7 @@ def collect_limits(
     every = own + [one for one in published if (one.point, one.side) not in spoken]
     firm: list[Drawn] = [(one, one.value_c) for one in every if one.point in PATH_POINTS]
     firm.extend(_supplier_most(binder))
-    firm.append((_need(job, path), path.need_c))
+    firm.append((_need(job, path, units), path.need_c))
     elsewhere = tuple(one for one in every if one.point not in PATH_POINTS)
     return CollectedLimits(tuple(firm), _coating(mix, binder), elsewhere, tuple(silenced))
 
@@ -141,13 +147,14 @@ def _supplier_most(binder: BinderState) -> list[Drawn]:
     return [(Limit("discharge", "high", value, name, "supplier", source, "entered"), value)]
 
 
-def _need(job: Job, path: PathDraws) -> Limit:
+def _need(job: Job, path: PathDraws, units: UnitSystem) -> Limit:
     minutes = job.rolling_wanted / 60.0
+    end = shown(path.case.rolling_end_c, "temperature", units)
     return Limit(
         point="delivery",
         side="low",
         value_c=float(np.median(path.need_c)),
-        name=f"paving needs {minutes:.0f} min of rolling above {path.case.rolling_end_c:.0f} °C",
+        name=f"paving needs {minutes:.0f} min of rolling above {end}",
         authority="computed",
         source="cooling of the mat, worked out from lift, base and weather",
         how_known="derived",

@@ -21,7 +21,8 @@ def reasons_of(situation: Situation, solution: Solution) -> tuple[Reason, ...]:
     if discharge is None:
         return ()
     found.append(Reason("low", f"Low: {_bound_words(discharge, 'low')}."))
-    margin = shown(discharge.target_c - discharge.low_c, "temperature_delta")
+    units = situation.facts.units
+    margin = shown(discharge.target_c - discharge.low_c, "temperature_delta", units)
     if solution.squeezed:
         found.append(
             Reason(
@@ -44,7 +45,7 @@ def reasons_of(situation: Situation, solution: Solution) -> tuple[Reason, ...]:
     found.extend(
         Reason(
             "passed-over",
-            f"The upper coating edge ({shown(limit.value_c, 'temperature')}) is passed over: the "
+            f"The upper coating edge ({shown(limit.value_c, 'temperature', units)}) is passed over: the "
             "paving needs more, and no firm limit forbids it.",
         )
         for limit in solution.set_aside
@@ -111,17 +112,13 @@ def weather_limits(situation: Situation, limits: CollectedLimits) -> tuple[Limit
 def cautions_of(situation: Situation, setpoints: tuple[Setpoint, ...]) -> tuple[Caution, ...]:
     """Cautions that belong beside this advice."""
     found = [Caution("C1", caution_text("C1"))]
-    binder, silo = situation.binder, situation.silo
+    binder, silo, units = situation.binder, situation.silo, situation.facts.units
     if binder and binder.flash_c is not None:
-        flash = (
-            f"{shown(binder.flash_c, 'temperature')}, {binder.flash_method or 'method not told'}"
-        )
+        flash = f"{shown(binder.flash_c, 'temperature', units)}, {binder.flash_method or 'method not told'}"
         found.append(
             Caution(
                 "C4",
-                caution_text(
-                    "C4", margin=shown(30.0, "temperature_delta", decimals=0), flash=flash
-                ),
+                caution_text("C4", margin=shown(30.0, "temperature_delta", units, 0), flash=flash),
             )
         )
     if binder and binder.modified:

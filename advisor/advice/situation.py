@@ -87,6 +87,10 @@ class _Notes:
         self.inputs: list[InputUsed] = []
         self.missing: list[str] = []
 
+    def shown(self, value: float, kind: str) -> str:
+        """``value`` in the units of the reader."""
+        return shown(value, kind, self.facts.units)
+
     def plain(self, name: str, text: str, origin: str, age_s: float | None = None) -> None:
         self.inputs.append(InputUsed(name, text, origin, age_s))
 
@@ -155,7 +159,8 @@ def _weather(facts: PlantFacts, at: datetime, noted: _Notes) -> Weather | None:
     rain = ", rain" if weather.rain else ""
     noted.plain(
         "weather",
-        f"air {shown(weather.air_c, 'temperature')}, wind {weather.wind_ms:.0f} m/s at 10 m, "
+        f"air {noted.shown(weather.air_c, 'temperature')}, "
+        f"wind {noted.shown(weather.wind_ms, 'speed')} at 10 m, "
         f"cloud {weather.cloud_of_sky:.0%}{rain}",
         "weather file",
         weather.age_s,
@@ -168,7 +173,7 @@ def _base(facts: PlantFacts, job: Job, at: datetime, noted: _Notes) -> tuple[flo
     oldest = load_table("defaults").row("surface age")["most"]
     age = (at - entry.valid_from).total_seconds() if entry else None
     if entry and age is not None and age <= oldest:
-        text = f"{shown(entry.fact.temperature, 'temperature')}, {entry.fact.condition}"
+        text = f"{noted.shown(entry.fact.temperature, 'temperature')}, {entry.fact.condition}"
         noted.plain("base surface", text, f"measured by {entry.who}", age)
         return float(entry.fact.temperature), str(entry.fact.condition)
     noted.assume(
@@ -184,30 +189,32 @@ def _silo(
     dryer = facts.folder.plant.dryer
     if run:
         rate = float(run.fact.rate)
-        noted.plain("mix rate", shown(rate, "mass_rate"), "order sheet")
+        noted.plain("mix rate", noted.shown(rate, "mass_rate"), "order sheet")
     else:
         rate = float(dryer.rate_max) * 0.8
-        noted.assume("mix rate", shown(rate, "mass_rate"), "four fifths of the plant's maximum")
+        noted.assume(
+            "mix rate", noted.shown(rate, "mass_rate"), "four fifths of the plant's maximum"
+        )
     if silo is None:
         return rate, 0.0, (0.0, 0.0, 0.0)
     reading = facts.latest(silo.content_signal, at) if silo.content_signal else None
     if reading and reading[0] > 0:
         kg, age = reading
         usual = kg / rate
-        noted.plain(f"content of {silo.name}", shown(kg, "mass"), "plant log", age)
+        noted.plain(f"content of {silo.name}", noted.shown(kg, "mass"), "plant log", age)
         return rate, kg, (0.5 * usual, usual, 2.0 * usual + 300.0)
     row = load_table("defaults").row("time in silo")
-    noted.assume("time in silo", shown(row["usual"], "duration"), row.source)
+    noted.assume("time in silo", noted.shown(row["usual"], "duration"), row.source)
     return rate, rate * row["usual"], (row["low"], row["usual"], row["high"])
 
 
 def _job_inputs(job: Job, noted: _Notes) -> None:
-    lift, spread = shown(job.lift, "length"), shown(job.haul.spread, "duration")
+    lift, spread = noted.shown(job.lift, "length"), noted.shown(job.haul.spread, "duration")
     noted.plain("lift", f"{lift} on {job.base.material}", "job")
     noted.plain(
         "haul",
-        f"{shown(job.haul.time, 'duration')} ± {spread} and "
-        f"{shown(job.wait, 'duration')} wait, {job.truck.body} body, cover {job.truck.cover}",
+        f"{noted.shown(job.haul.time, 'duration')} ± {spread} and "
+        f"{noted.shown(job.wait, 'duration')} wait, {job.truck.body} body, cover {job.truck.cover}",
         "job",
     )
-    noted.plain("rolling time wanted", shown(job.rolling_wanted, "duration"), "job")
+    noted.plain("rolling time wanted", noted.shown(job.rolling_wanted, "duration"), "job")

@@ -65,11 +65,7 @@ def _bounds(allowed: TankRange, side: Side) -> list[Limit]:
             side,
             bound.value_c,
             bound.set_by,
-            "supplier"
-            if bound.how_known == "entered"
-            else "safety"
-            if side == "high"
-            else "computed",
+            _owner(bound, side),
             bound.source,
             bound.how_known,  # type: ignore[arg-type]
             sd_k=bound.sd_k,

@@ -68,6 +68,18 @@ def volume_factor_60f(temperature_c: ArrayLike) -> Floats:
     return found
 
 
+def linear_volume_factor(temperature_c: ArrayLike) -> Floats:
+    """Volume correction factor [1] to the base of 15 C by the straight-line rule, for comparison.
+
+    Args:
+        temperature_c: temperature [C].
+
+    Source: ASTM D4311 section 3.3 (coefficient looked up).
+    """
+    found: Floats = 1.0 - LINEAR_EXPANSION_PER_K * (np.asarray(temperature_c, float) - BASE_C)
+    return found
+
+
 def density_kgm3(
     temperature_c: ArrayLike, density_15c_kgm3: ArrayLike, column: Column = "A"
 ) -> Floats:

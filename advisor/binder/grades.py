@@ -89,7 +89,7 @@ def check_grade(grade: Grade, values: Mapping[str, float]) -> tuple[Check, ...]:
 
     Args:
         grade: the grade with its limits.
-        values: value by property name, inside units.
+        values: value by property name [any unit], inside units.
     """
     found = []
     for limit in grade.limits:
@@ -139,7 +139,7 @@ def cross_checks(
     Args:
         curve: A-VTS curve fitted to its readings, where there is one.
         readings: its readings.
-        values: value by property name, inside units.
+        values: value by property name [any unit], inside units.
     """
     found = []
     soft, pen = values.get("softening_point"), values.get("penetration_25c")

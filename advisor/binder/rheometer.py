@@ -108,7 +108,7 @@ def continuous_grade_c(
         low_pa: stiffness there [Pa].
         high_c: higher test temperature [C].
         high_pa: stiffness there [Pa].
-        limit_pa: 1000 Pa original, 2200 Pa after RTFO.
+        limit_pa: limit [Pa], 1000 original, 2200 after RTFO.
 
     Source: reproduces the printed grades of the FHWA pavement testing facility binders (looked up).
     """

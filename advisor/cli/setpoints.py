@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -44,7 +45,7 @@ def setpoints(
     facts = open_plant(plant, latest_only=True)
     with facts.records:
         moment = moment_now(facts.folder, at)
-        advice = advise(gather_situation(facts, moment, job, tank))
+        advice = advise(gather_situation(replace(facts, units=units), moment, job, tank))
     if as_json:
         print_json(advice)
         return

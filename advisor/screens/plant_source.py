@@ -30,7 +30,7 @@ from advisor.review.result import Excursion, Review
 from advisor.screens.source import JobChoice, LaterHour
 from advisor.settings.folder import PlantFolder
 from advisor.settings.plant import Shift
-from advisor.units import shown
+from advisor.units import UnitSystem, shown
 
 T = TypeVar("T")
 
@@ -95,17 +95,21 @@ class PlantSource:
         """The jobs that can be chosen."""
         return [JobChoice(one.code, one.name, one.mix) for one in self._folder.jobs]
 
-    def current_advice(self, job: str | None, at: datetime | None) -> Advice:
-        """The advice for ``job``, or for the job that runs, at ``at`` or now."""
+    def current_advice(
+        self, job: str | None, at: datetime | None, units: UnitSystem = "si"
+    ) -> Advice:
+        """The advice for ``job``, or for the job that runs, at ``at`` or now, told in ``units``."""
         moment = at or self.now()
-        facts = self._facts
+        facts = replace(self._facts, units=units)
         return self._kept(
-            ("advice", job, moment), lambda: advise(gather_situation(facts, moment, job))
+            ("advice", job, moment, units), lambda: advise(gather_situation(facts, moment, job))
         )
 
-    def rest_of_shift(self, job: str | None, at: datetime) -> Sequence[LaterHour]:
-        """The coming hours of the shift for the same job."""
-        return self._kept(("later", job, at), lambda: self._later(job, at))
+    def rest_of_shift(
+        self, job: str | None, at: datetime, units: UnitSystem = "si"
+    ) -> Sequence[LaterHour]:
+        """The coming hours of the shift for the same job, told in ``units``."""
+        return self._kept(("later", job, at, units), lambda: self._later(job, at, units))
 
     def readings(self, at: datetime) -> Sequence[Reading]:
         """The latest reading at each point of the heat path at ``at``."""
@@ -276,13 +280,13 @@ class PlantSource:
             doubt=str(row.get(f"{name}_mark", "") or ""),
         )
 
-    def _later(self, job: str | None, at: datetime) -> list[LaterHour]:
+    def _later(self, job: str | None, at: datetime, units: UnitSystem) -> list[LaterHour]:
         folder = self._folder
         shift_end = _shift_end(folder.plant.shifts, at.astimezone(self.zone))
         last = min(shift_end or at + timedelta(hours=_LATER_HOURS), at + timedelta(hours=12))
         hour = at.replace(minute=0, second=0, microsecond=0) + timedelta(hours=1)
         # What is read or recorded later is not known yet.
-        facts = _as_known(self._facts, at)
+        facts = replace(_as_known(self._facts, at), units=units)
         situations: list[Situation] = []
         found: list[LaterHour] = []
         running = job or _running(facts, at)
@@ -344,7 +348,9 @@ def _change_words(situation: Situation, before: str | None) -> str:
     if weather is None:
         return "weather not known"
     rain = ", rain" if weather.rain else ""
-    return f"air {shown(weather.air_c, 'temperature')}, wind {weather.wind_ms:.0f} m/s{rain}"
+    units = situation.facts.units
+    air = shown(weather.air_c, "temperature", units)
+    return f"air {air}, wind {shown(weather.wind_ms, 'speed', units, 0)}{rain}"
 
 
 def _with_target(hour: LaterHour, advice: Advice) -> LaterHour:

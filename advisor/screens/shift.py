@@ -161,7 +161,9 @@ def register(app: Dash, source: Source) -> None:
         faults: list[str],
     ) -> dict[str, Any]:
         try:
-            view = shift_view(source, job or None, datetime.fromisoformat(at) if at else None)
+            view = shift_view(
+                source, job or None, datetime.fromisoformat(at) if at else None, units
+            )
         except AdvisorError as error:
             return _refused(error, faults)
         return shown(view, units, ink_of(scheme), narrow, faults)
@@ -186,7 +188,7 @@ def register(app: Dash, source: Source) -> None:
             return [], True
         moment = datetime.fromisoformat(at) if at else None
         try:
-            advice = source.current_advice(job or None, moment)
+            advice = source.current_advice(job or None, moment, units)
         except AdvisorError as error:
             return [parts.error_block(error)], False
         return why_sheet(advice, cast(Point, ctx.triggered_id["key"]), source.zone, units), False

@@ -11,6 +11,7 @@ from advisor.advice.result import Advice
 from advisor.figures.drawn import Reading, Trace, WindowSpan
 from advisor.review.result import Excursion
 from advisor.screens.source import LaterHour, Source, is_stale
+from advisor.units import UnitSystem
 
 TREND_HOURS = 4.0
 
@@ -47,13 +48,15 @@ class ShiftView:
         return self.at - timedelta(hours=TREND_HOURS)
 
 
-def shift_view(source: Source, job: str | None, at: datetime | None) -> ShiftView:
-    """The shift at ``at`` or now, for ``job`` or the job that runs.
+def shift_view(
+    source: Source, job: str | None, at: datetime | None, units: UnitSystem = "si"
+) -> ShiftView:
+    """The shift at ``at`` or now, for ``job`` or the job that runs, told in ``units``.
 
     Raises AdvisorError where the source cannot give an advice.
     """
     moment = at or source.now()
-    advice = source.current_advice(job, moment)
+    advice = source.current_advice(job, moment, units)
     last = source.last_reading_at(moment)
     start = moment - timedelta(hours=TREND_HOURS)
     return ShiftView(
@@ -67,7 +70,7 @@ def shift_view(source: Source, job: str | None, at: datetime | None) -> ShiftVie
         discharge=source.discharge(start, moment),
         windows=source.windows_in_force(start, moment),
         excursions=source.excursions_open(moment),
-        later=source.rest_of_shift(job, moment),
+        later=source.rest_of_shift(job, moment, units),
     )
 
 

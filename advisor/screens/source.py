@@ -11,6 +11,7 @@ from zoneinfo import ZoneInfo
 from advisor.advice.result import Advice
 from advisor.figures.drawn import Reading, TicketPoint, Trace, WindowSpan
 from advisor.review.result import Excursion, Review
+from advisor.units import UnitSystem
 
 # Plant logs come once a minute; after five missed ones the reading is history, not the present.
 # Common practice, no source.
@@ -64,11 +65,15 @@ class Source(Protocol):
     def jobs(self) -> Sequence[JobChoice]:
         """The jobs that can be chosen."""
 
-    def current_advice(self, job: str | None, at: datetime | None) -> Advice:
-        """The advice for ``job``, or for the job that runs, at ``at`` or now."""
+    def current_advice(
+        self, job: str | None, at: datetime | None, units: UnitSystem = "si"
+    ) -> Advice:
+        """The advice for ``job``, or for the job that runs, at ``at`` or now, told in ``units``."""
 
-    def rest_of_shift(self, job: str | None, at: datetime) -> Sequence[LaterHour]:
-        """The coming hours of the shift for the same job."""
+    def rest_of_shift(
+        self, job: str | None, at: datetime, units: UnitSystem = "si"
+    ) -> Sequence[LaterHour]:
+        """The coming hours of the shift for the same job, told in ``units``."""
 
     def readings(self, at: datetime) -> Sequence[Reading]:
         """The latest reading at each point of the heat path at ``at``."""

@@ -192,7 +192,7 @@ class MadeUpPlant:
     def jobs(self) -> Sequence[JobChoice]:
         return (JobChoice("J-3", "Mill Road", "S-10"), JobChoice("J-7", "Quay Street", "B-20"))
 
-    def current_advice(self, job: str | None, at: datetime | None) -> Advice:
+    def current_advice(self, job: str | None, at: datetime | None, units: str = "si") -> Advice:
         self.asked.append((job, at))
         if self.fails:
             raise MissingInput.of(
@@ -204,7 +204,9 @@ class MadeUpPlant:
             )
         return replace(self.shown or advice(), at=at or NOW, job=job or "J-3")
 
-    def rest_of_shift(self, job: str | None, at: datetime) -> Sequence[LaterHour]:
+    def rest_of_shift(
+        self, job: str | None, at: datetime, units: str = "si"
+    ) -> Sequence[LaterHour]:
         hour = at.replace(minute=0) + timedelta(hours=1)
         return (
             LaterHour(hour, "air 9 °C, wind 5 m/s", 156),

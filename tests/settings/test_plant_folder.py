@@ -143,7 +143,7 @@ def test_units_are_converted_once_where_they_are_read(own_demo):
 
 def test_a_name_asked_for_and_not_there_lists_the_nearest(demo_folder):
     folder = read_plant(demo_folder)
-    with pytest.raises(FaultyInput, match="There is no job 'J99'.*Known here: J01, J02"):
+    with pytest.raises(FaultyInput, match=r"There is no job 'J99'.*Known here: J01, J02"):
         folder.job("J99")
     with pytest.raises(FaultyInput, match="Did you mean 'AC20R'"):
         folder.mix("AC20")
