@@ -45,8 +45,8 @@ def reasons_of(situation: Situation, solution: Solution) -> tuple[Reason, ...]:
     found.extend(
         Reason(
             "passed-over",
-            f"The upper coating edge ({shown(limit.value_c, 'temperature', units)}) is passed over: the "
-            "paving needs more, and no firm limit forbids it.",
+            f"The upper coating edge ({shown(limit.value_c, 'temperature', units)}) is passed "
+            "over: the paving needs more, and no firm limit forbids it.",
         )
         for limit in solution.set_aside
     )
@@ -114,7 +114,8 @@ def cautions_of(situation: Situation, setpoints: tuple[Setpoint, ...]) -> tuple[
     found = [Caution("C1", caution_text("C1"))]
     binder, silo, units = situation.binder, situation.silo, situation.facts.units
     if binder and binder.flash_c is not None:
-        flash = f"{shown(binder.flash_c, 'temperature', units)}, {binder.flash_method or 'method not told'}"
+        point = shown(binder.flash_c, "temperature", units)
+        flash = f"{point}, {binder.flash_method or 'method not told'}"
         found.append(
             Caution(
                 "C4",

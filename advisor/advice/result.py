@@ -72,12 +72,21 @@ class Remedy:
 
 @dataclass(frozen=True)
 class Clash:
-    """Two limits that no discharge temperature satisfies together."""
+    """Two limits that no discharge temperature satisfies together.
+
+    ``at_least_c`` and ``at_most_c`` are what the two ask of the discharge [C].
+    """
 
     lower: Limit
     upper: Limit
-    gap_k: float
+    at_least_c: float
+    at_most_c: float
     remedies: tuple[Remedy, ...] = ()
+
+    @property
+    def gap_k(self) -> float:
+        """How far the two are apart at discharge [K]."""
+        return self.at_least_c - self.at_most_c
 
 
 @dataclass(frozen=True)

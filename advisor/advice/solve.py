@@ -122,8 +122,7 @@ def solve(
     lows, highs = discharge_bounds(every, legs, confidence)
     low, high = lows[0], highs[0]
     if low.at_discharge_c > high.at_discharge_c:
-        gap = low.at_discharge_c - high.at_discharge_c
-        clash = Clash(low.limit, high.limit, gap)
+        clash = Clash(low.limit, high.limit, low.at_discharge_c, high.at_discharge_c)
         return Solution((), lows, highs, clash, (), False)
     target = _target_c(lows, coating, scatter_k, confidence)
     set_aside: tuple[Limit, ...] = ()

@@ -112,8 +112,13 @@ def _print_clash(advice: Advice, units: UnitSystem) -> None:
     assert clash is not None  # noqa: S101 - asked for only where there is one
     gap = shown(clash.gap_k, "temperature_delta", units)
     click.echo(f"\nNo safe window: two limits clash by {gap} at discharge.")
-    click.echo(f"  wants more: {_name(clash.lower)} ({clash.lower.source})")
-    click.echo(f"  allows no more: {_name(clash.upper)} ({clash.upper.source})")
+    for words, value, limit in (
+        ("wants at least", clash.at_least_c, clash.lower),
+        ("allows at most", clash.at_most_c, clash.upper),
+    ):
+        click.echo(
+            f"  {words} {shown(value, 'temperature', units)}: {_name(limit)} ({limit.source})"
+        )
     if clash.remedies:
         click.echo("What would help:")
     for one in clash.remedies:

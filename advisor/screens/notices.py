@@ -18,6 +18,9 @@ from advisor.screens.words import (
 )
 from advisor.units import UnitSystem
 
+# A reading nearer to its bound than this is not worth a notice; common practice, no source.
+_WORTH_K = 1.0
+
 LABELS: dict[Point, str] = {
     "binder_tank": "Binder tank",
     "hot_aggregate": "Hot aggregate",
@@ -48,6 +51,8 @@ def notices(view: ShiftView, units: UnitSystem) -> tuple[Notice, ...]:
         verdict = verdict_of(reading.value_c, setpoint.low_c, setpoint.high_c, reading.doubt)
         if verdict in ("hot", "cold") and reading.point not in covered:
             bound = setpoint.high_c if verdict == "hot" else setpoint.low_c
+            if abs((reading.value_c or bound) - bound) < max(_WORTH_K, reading.sd_k):
+                continue
             told.append(_outside(reading, verdict, bound, view, units))
         elif verdict == "unknown" and reading.doubt and not view.stale:
             told.append(

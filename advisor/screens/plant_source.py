@@ -29,7 +29,7 @@ from advisor.review.plant import PlantReview, log_span, review_plant
 from advisor.review.result import Excursion, Review
 from advisor.screens.source import JobChoice, LaterHour
 from advisor.settings.folder import PlantFolder
-from advisor.settings.plant import Shift
+from advisor.settings.shifts import shift_at, shift_end
 from advisor.units import UnitSystem, shown
 
 T = TypeVar("T")
@@ -41,7 +41,6 @@ _KEPT = 64  # answers kept
 _RECENT = timedelta(hours=8)
 _LATER_HOURS = 6
 _STILL_OPEN = timedelta(minutes=5)
-_DAYS = ("mon", "tue", "wed", "thu", "fri", "sat", "sun")
 
 
 @dataclass(frozen=True, eq=False)
@@ -88,7 +87,7 @@ class PlantSource:
 
     def shift_name(self, at: datetime) -> str:
         """Name of the shift at ``at``; empty where none is set."""
-        shift = _shift_at(self._folder.plant.shifts, at.astimezone(self.zone))
+        shift = shift_at(self._folder.plant.shifts, at.astimezone(self.zone))
         return f"{shift.name} shift" if shift else ""
 
     def jobs(self) -> Sequence[JobChoice]:
@@ -282,7 +281,7 @@ class PlantSource:
 
     def _later(self, job: str | None, at: datetime, units: UnitSystem) -> list[LaterHour]:
         folder = self._folder
-        shift_end = _shift_end(folder.plant.shifts, at.astimezone(self.zone))
+        shift_end = shift_end(folder.plant.shifts, at.astimezone(self.zone))
         last = min(shift_end or at + timedelta(hours=_LATER_HOURS), at + timedelta(hours=12))
         hour = at.replace(minute=0, second=0, microsecond=0) + timedelta(hours=1)
         # What is read or recorded later is not known yet.
@@ -356,7 +355,7 @@ def _change_words(situation: Situation, before: str | None) -> str:
 def _with_target(hour: LaterHour, advice: Advice) -> LaterHour:
     discharge = advice.setpoint("discharge")
     if discharge is None:
-        reason = why_none(advice)
+        reason = "no safe window" if advice.clash else why_none(advice)
         return replace(hour, change=f"{hour.change}: {reason}" if reason else hour.change)
     return replace(hour, target_c=discharge.target_c)
 
@@ -405,30 +404,4 @@ def _windows(rows: pd.DataFrame, start: datetime, end: datetime) -> list[WindowS
         until = times[after] if after < len(times) else end
         low, target, high = (float(one) if np.isfinite(one) else None for one in numbers[first])
         found.append(WindowSpan(times[first], until, low, target, high, str(mixes[first])))
-    return found
-
-
-def _shift_at(shifts: Sequence[Shift], local: datetime) -> Shift | None:
-    return next((one for one, start, end in _shifts_around(shifts, local) if start <= local < end),
-                None)  # fmt: skip
-
-
-def _shift_end(shifts: Sequence[Shift], local: datetime) -> datetime | None:
-    """When the shift that is on at ``local`` ends [UTC]; None outside of shifts."""
-    ends = [end for _, start, end in _shifts_around(shifts, local) if start <= local < end]
-    return min(ends).astimezone(UTC) if ends else None
-
-
-def _shifts_around(
-    shifts: Sequence[Shift], local: datetime
-) -> list[tuple[Shift, datetime, datetime]]:
-    """Each shift of the day of ``local`` and of the day before, with start and end."""
-    found = []
-    for shift in shifts:
-        for day in (local.date() - timedelta(days=1), local.date()):
-            if _DAYS[day.weekday()] not in shift.days:
-                continue
-            start = datetime.combine(day, shift.start, tzinfo=local.tzinfo)
-            later = day + timedelta(days=1) if shift.end <= shift.start else day
-            found.append((shift, start, datetime.combine(later, shift.end, tzinfo=local.tzinfo)))
     return found

@@ -193,7 +193,7 @@ def excursion_rows(
                 shown_number(one.waste.fuel_kwh.middle * 3.6e6, "energy", units),
                 0 if units == "si" else 2,
             ),
-            "money": money_words(one.waste.money, currency) if one.side == "hot" else "",
+            "money": money_words(one.waste.money, currency) if one.waste.excess_tk else "",
             "mix": one.mix,
             "job": one.job,
             "state": one.state,
@@ -213,6 +213,7 @@ def excursion_columns(units: UnitSystem) -> list[dict[str, Any]]:
 
     return [
         {"field": "when", "headerName": "start", "width": 150, "pinned": "left"},
+        {"field": "where", "headerName": "where", "width": 136},
         {"field": "side", "headerName": "side", "width": 84},
         number("minutes", "min", 70),
         number("tonnes", shown_unit("mass", units), 76),
@@ -221,9 +222,16 @@ def excursion_columns(units: UnitSystem) -> list[dict[str, Any]]:
         number("fuel", shown_unit("energy", units), 88),
         {"field": "money", "headerName": "money", "width": 136},
         {"field": "mix", "headerName": "mix", "width": 90},
-        {"field": "cause", "headerName": "likely cause", "minWidth": 290, "flex": 1},
-        {"field": "evidence", "headerName": "evidence", "minWidth": 420, "flex": 2},
-        {"field": "where", "headerName": "where", "width": 140},
+        {"field": "cause", "headerName": "likely cause", "width": 170},
+        {
+            "field": "evidence",
+            "headerName": "evidence",
+            "minWidth": 420,
+            "flex": 2,
+            "wrapText": True,
+            "autoHeight": True,
+            "cellClass": "wrapped",
+        },
         {"field": "job", "headerName": "job", "width": 90},
         {"field": "state", "headerName": "state", "width": 115},
     ]

@@ -36,6 +36,14 @@ TRAVEL: tuple[Point, ...] = (
     "load_out",
     "delivery",
 )
+AT_POINT: dict[Point, str] = {
+    "binder_tank": "in the tank",
+    "hot_aggregate": "at the aggregate",
+    "discharge": "at discharge",
+    "silo": "in the silo",
+    "load_out": "at load-out",
+    "delivery": "at the paver",
+}
 # The window takes the middle of the little scale, so that what is outside has room to show.
 _WINDOW_FROM, _WINDOW_TO = 22.0, 78.0
 
@@ -200,8 +208,8 @@ def clash_block(clash: Clash, units: UnitSystem) -> object:
             ),
             html.Div(
                 [
-                    _clashing("at least", clash.lower, units),
-                    _clashing("at most", clash.upper, units),
+                    _clashing("at least", clash.at_least_c, clash.lower, units),
+                    _clashing("at most", clash.at_most_c, clash.upper, units),
                 ],
                 className="against",
             ),
@@ -215,7 +223,10 @@ def clash_block(clash: Clash, units: UnitSystem) -> object:
                                 [
                                     html.Td([one.action, _caution(one.caution)]),
                                     html.Td(delta_words(one.gain_k, units), className="number"),
-                                    html.Td("enough" if one.enough else "not enough"),
+                                    html.Td(
+                                        "enough" if one.enough else "not enough",
+                                        className="short",
+                                    ),
                                 ]
                             )
                             for one in clash.remedies
@@ -230,13 +241,16 @@ def clash_block(clash: Clash, units: UnitSystem) -> object:
     )
 
 
-def _clashing(words: str, limit: Limit, units: UnitSystem) -> object:
+def _clashing(words: str, at_discharge_c: float, limit: Limit, units: UnitSystem) -> object:
+    place = "" if limit.point == "discharge" else (
+        f", for {temperature_words(limit.value_c, units)} {AT_POINT[limit.point]}"
+    )  # fmt: skip
     return html.Div(
         [
-            html.P(words, className="quiet"),
+            html.P(f"{words}{place}", className="quiet"),
             html.P(
                 [
-                    html.Span(degrees(limit.value_c, units), className="figure"),
+                    html.Span(degrees(at_discharge_c, units), className="figure"),
                     html.Span(unit_words(units), className="unit"),
                 ],
                 className="target",
@@ -252,7 +266,7 @@ def _clashing(words: str, limit: Limit, units: UnitSystem) -> object:
 
 
 def _caution(text: str) -> object:
-    return html.Span(f" Caution: {text}.", className="quiet") if text else ""
+    return html.Span(f" Caution: {text.rstrip('.')}.", className="quiet") if text else ""
 
 
 def missing_block(advice: Advice) -> object:

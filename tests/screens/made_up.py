@@ -154,7 +154,8 @@ def clashing(at: datetime = NOW) -> Advice:
         clash=Clash(
             replace(contract, point="discharge", value_c=173.5),
             SUPPLIER,
-            3.5,
+            173.5,
+            170.0,
             (
                 Remedy("Use insulated bodies", 5.1, True, "check that they are dry"),
                 Remedy("Cut the queue at the paver to 5 min", 1.9, False),
