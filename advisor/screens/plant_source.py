@@ -6,7 +6,7 @@ import threading
 import time
 from collections.abc import Callable, Hashable, Sequence
 from dataclasses import dataclass, replace
-from datetime import UTC, datetime, timedelta
+from datetime import datetime, timedelta
 from itertools import pairwise
 from pathlib import Path
 from typing import TypeVar, cast
@@ -281,8 +281,8 @@ class PlantSource:
 
     def _later(self, job: str | None, at: datetime, units: UnitSystem) -> list[LaterHour]:
         folder = self._folder
-        shift_end = shift_end(folder.plant.shifts, at.astimezone(self.zone))
-        last = min(shift_end or at + timedelta(hours=_LATER_HOURS), at + timedelta(hours=12))
+        ends = shift_end(folder.plant.shifts, at.astimezone(self.zone))
+        last = min(ends or at + timedelta(hours=_LATER_HOURS), at + timedelta(hours=12))
         hour = at.replace(minute=0, second=0, microsecond=0) + timedelta(hours=1)
         # What is read or recorded later is not known yet.
         facts = replace(_as_known(self._facts, at), units=units)
