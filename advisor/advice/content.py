@@ -98,14 +98,17 @@ def _certificate(facts: PlantFacts, lot: str, at: datetime) -> Entry:
 
 def _curve(content: TankContent, certificates: tuple[Certificate, ...]) -> ViscosityCurve | None:
     curves = [certificate_curve(one) for one in certificates]
-    if len(curves) == 1 or any(curve is None for curve in curves):
-        return curves[0]
-    polymers = [one.modifier for one in certificates]
+    known = [curve for curve in curves if curve is not None]
+    if len(known) < len(curves):
+        return None
+    if len(known) == 1:
+        return known[0]
+    polymers = [one.modifier for one in certificates if one.modified]
     return blend_curves(
-        [curve for curve in curves if curve is not None],
+        known,
         [share for _, share in content.shares],
         share_sd=_SHARE_SD,
-        polymer_kinds=[name for name in polymers if name != "none"],
+        polymer_kinds=polymers,
     )
 
 

@@ -126,6 +126,7 @@ from advisor.binder.rotational import (
     shear_rate_per_s,
     torque_share,
 )
+from advisor.binder.selection import SheetCurve, curve_of_sheet, select_for_mixing
 from advisor.binder.tank import Bound, TankRange, flash_margin_k, pumping_temperature_c, tank_range
 from advisor.binder.vft import VftFit, fit_vft
 from advisor.binder.windows import ViscosityTarget, Window, equiviscous_window, window_for
@@ -150,6 +151,7 @@ __all__ = [
     "PrecisionTable",
     "Reading",
     "Sample",
+    "SheetCurve",
     "Shift",
     "SourceChange",
     "Spindle",
@@ -180,6 +182,7 @@ __all__ = [
     "cross_williamson_pas",
     "crossover_frequency_rad_s",
     "curve_avts",
+    "curve_of_sheet",
     "curve_through",
     "d341_constants",
     "density_15c_from_density",
@@ -229,6 +232,7 @@ __all__ = [
     "rheometer_reading",
     "rotational_reading",
     "rutting_stiffness_pa",
+    "select_for_mixing",
     "share_for_critical_temperature",
     "shear_rate_per_s",
     "shear_window",

@@ -5,116 +5,231 @@ from __future__ import annotations
 from collections.abc import Sequence
 from functools import lru_cache
 
-import numpy as np
-
 from advisor.binder import (
+    AvtsPrior,
     Bulb,
-    Precision,
+    Modifier,
     Reading,
+    Sample,
+    SheetCurve,
+    SupplierRange,
     ViscosityCurve,
+    ViscosityTarget,
     Window,
+    curve_of_sheet,
     equiviscous_window,
-    fit_avts,
+    govern,
     kinematic_capillary_reading,
     kinematic_value_reading,
+    lowered_window,
+    penetration_reading,
+    plain_rule_refusal,
+    rheometer_reading,
     rotational_reading,
+    softening_point_reading,
+    supplier_window,
     vacuum_capillary_reading,
     viscosity_value_reading,
+    waxed_curve,
+    window_for,
 )
-from advisor.binder.modified import SupplierRange, govern, supplier_window
-from advisor.binder.readings import error_correlation
 from advisor.errors import MissingInput
-from advisor.settings.certificate import Certificate, LabReading
-from advisor.settings.tables import load_table
+from advisor.settings.binder_tables import (
+    find_grade,
+    modifier_named,
+    precision_table,
+    usual_curve_of_any,
+    viscosity_target,
+)
+from advisor.settings.certificate import (
+    Certificate,
+    KinematicCapillary,
+    KinematicValue,
+    LabReading,
+    Rotational,
+    VacuumCapillary,
+)
 
 
 @lru_cache(maxsize=64)
 def certificate_readings(certificate: Certificate) -> tuple[Reading, ...]:
-    """Readings of a certificate turned into viscosity; those that measure it."""
+    """Readings of a certificate turned into viscosity, judged by the rules of their methods.
+
+    Tests that serve another purpose (sweeps, stiffness for grading) give none.
+    """
     found = (_reading(certificate, one) for one in certificate.readings)
     return tuple(one for one in found if one is not None)
 
 
 @lru_cache(maxsize=64)
-def certificate_curve(certificate: Certificate) -> ViscosityCurve | None:
-    """The curve through the usable readings; None where fewer than two are."""
-    usable = [one for one in certificate_readings(certificate) if one.usable]
-    if len({one.temperature_c for one in usable}) < 2:
+def certificate_prior(certificate: Certificate) -> AvtsPrior | None:
+    """Usual curves of the certificate's grade; None for a binder no grade describes.
+
+    A plain binder of a grade not known here is met by the usual curves of any paving binder.
+    """
+    if certificate.modified:
         return None
-    return fit_avts(
-        np.array([one.temperature_c for one in usable]),
-        np.array([one.viscosity_pas for one in usable]),
-        np.array([one.relative_sd for one in usable]),
-        error_correlation(usable),
-    ).curve()
+    grade = find_grade(certificate.grade)
+    if grade is None:
+        return usual_curve_of_any()
+    return grade.prior
+
+
+def certificate_modifiers(certificate: Certificate) -> tuple[Modifier, ...]:
+    """What was in the binder when it was tested."""
+    return () if certificate.modifier == "none" else (modifier_named(certificate.modifier),)
+
+
+@lru_cache(maxsize=64)
+def certificate_sheet(certificate: Certificate, same_laboratory: bool = False) -> SheetCurve:
+    """The readings with their verdict and the curve they give together."""
+    return curve_of_sheet(
+        certificate_readings(certificate),
+        certificate_prior(certificate),
+        certificate_modifiers(certificate),
+        same_laboratory=same_laboratory,
+    )
+
+
+@lru_cache(maxsize=64)
+def certificate_curve(certificate: Certificate) -> ViscosityCurve | None:
+    """The curve of the binder with what the plant adds to it; None where none may be drawn."""
+    curve = certificate_sheet(certificate).curve
+    for name in certificate.additives:
+        added = modifier_named(name)
+        if curve is not None and added.kind == "wax":
+            curve = waxed_curve(curve, added)
+    return curve
+
+
+def target_window(
+    curve: ViscosityCurve, target: ViscosityTarget, density_15c_kgm3: float | None = None
+) -> Window:
+    """Window of ``curve`` for ``target``, named by its range of viscosity."""
+    if target.basis == "kinematic":
+        return window_for(curve, target, density_15c_kgm3)
+    tolerance = 0.5 * (target.high - target.low)
+    even = abs(target.target - 0.5 * (target.high + target.low)) < 1e-9
+    if not even or tolerance == 0.0:
+        return window_for(curve, target)
+    return equiviscous_window(
+        curve,
+        target.target,
+        tolerance,
+        purpose=target.purpose,
+        method=f"{target.low:.2f} to {target.high:.2f} Pa.s",
+        source=target.source,
+        how_known=target.how_known,
+    )
 
 
 def mixing_window(
-    certificates: Sequence[Certificate], curve: ViscosityCurve | None
+    certificates: Sequence[Certificate], curve: ViscosityCurve | None, target: str = "mixing"
 ) -> tuple[Window | None, tuple[str, ...]]:
-    """The window that governs mixing, and what was refused and why."""
-    row = load_table("viscosity_targets").row("mixing")
-    plain = None
-    if curve is not None:
-        plain = equiviscous_window(
-            curve,
-            row["target"],
-            row["tolerance"],
-            method=f"{row['target'] - row['tolerance']:.2f} to "
-            f"{row['target'] + row['tolerance']:.2f} Pa.s",
-            source=row.origin("target").source,
-            how_known=row.origin("target").how_known,
-        )
-    because = "; ".join(f"{one.modifier} in lot {one.lot}" for one in certificates if one.modified)
-    governed = govern("mixing", plain, _supplier(certificates), modified_because=because)
+    """The window that governs mixing by ``target``, and what was refused and why."""
+    plain = None if curve is None else target_window(curve, viscosity_target(target))
+    for added in _added(certificates):
+        if plain is not None and added.offset_high_k > 0.0:
+            plain = lowered_window(plain, added)
+    because = "; ".join(
+        f"{plain_rule_refusal(certificate_modifiers(one))} ({one.modifier} in lot {one.lot})"
+        for one in certificates
+        if one.modified
+    )
+    governed = govern("mixing", plain, supplier_range(certificates), modified_because=because)
     return governed.governing, governed.refused
 
 
-def _supplier(certificates: Sequence[Certificate]) -> Window | None:
-    """What all suppliers' mixing ranges allow together."""
-    ranges = [(one, one.supplier.mixing) for one in certificates if one.supplier.mixing]
+def _added(certificates: Sequence[Certificate]) -> list[Modifier]:
+    """What acts by an offset, in the binder or added at the plant, each once."""
+    names = [one.modifier for one in certificates if one.modifier != "none"]
+    names += [name for one in certificates for name in one.additives]
+    return [modifier_named(name) for name in dict.fromkeys(names)]
+
+
+def supplier_range(certificates: Sequence[Certificate], purpose: str = "mixing") -> Window | None:
+    """What all suppliers' ranges for ``purpose`` allow together; None where none is stated."""
+    ranges = [(one, getattr(one.supplier, purpose)) for one in certificates]
+    ranges = [(one, stated) for one, stated in ranges if stated is not None]
     if not ranges:
         return None
     source = " and ".join(f"{one.source}, lot {one.lot}" for one, _ in ranges)
     low = max(float(one.low) for _, one in ranges)
     high = min(float(one.high) for _, one in ranges)
-    return supplier_window(SupplierRange("mixing", low, high, source))
-
-
-def _precision(method: str) -> Precision:
-    row = load_table("precision").row(method)
-    origin = row.origin("several_share")
-    return Precision(
-        method, row["one_share"], row["several_share"], True, origin.source, origin.how_known
-    )
+    return supplier_window(SupplierRange(purpose, low, high, source))
 
 
 def _reading(certificate: Certificate, one: LabReading) -> Reading | None:
-    if one.method == "vacuum capillary":
-        bulb = Bulb("", float(one.factor), float(one.time))
-        return vacuum_capillary_reading(one.temperature, [bulb], _precision(one.method))
-    if one.method == "rotational":
+    sample = Sample(one.condition, one.laboratory or certificate.laboratory)
+    precision = precision_table().find
+    if isinstance(one, VacuumCapillary):
+        bulbs = [Bulb(bulb.name, float(bulb.factor), float(bulb.time)) for bulb in one.bulbs]
+        if one.factor is not None and one.time is not None:
+            bulbs = [Bulb("", float(one.factor), float(one.time))]
+        return vacuum_capillary_reading(
+            float(one.temperature), bulbs, precision("vacuum capillary"),
+            average=one.average, sample=sample,
+        )  # fmt: skip
+    if isinstance(one, KinematicCapillary | KinematicValue):
+        return _kinematic(certificate, one, sample)
+    if isinstance(one, Rotational):
+        values = [float(one.viscosity)] if one.viscosity is not None else None
         return rotational_reading(
-            one.temperature,
-            [float(one.viscosity)],
-            _precision(one.method),
+            float(one.temperature),
+            values or [float(value) for value in one.viscosities],
+            precision("rotational"),
             spindle=one.spindle,
             speed_rad_s=None if one.speed is None else float(one.speed),
+            torque=None if one.torque is None else float(one.torque),
+            sample=sample,
         )
     if one.method == "viscosity":
-        return viscosity_value_reading(one.temperature, one.viscosity, _precision("rotational"))
-    if one.method in ("kinematic capillary", "kinematic viscosity"):
-        density = certificate.density_15c_kgm3
-        if density is None:
-            raise MissingInput.of(
-                "density",
-                f"Lot {certificate.lot} has a kinematic viscosity and no density.",
-                "Enter the density of the certificate.",
-                field="density",
-            )
-        precision = _precision("kinematic capillary")
-        if one.method == "kinematic viscosity":
-            return kinematic_value_reading(one.temperature, one.viscosity, density, precision)
-        bulb = Bulb("", float(one.factor), float(one.time))
-        return kinematic_capillary_reading(one.temperature, [bulb], density, precision)
+        return viscosity_value_reading(
+            float(one.temperature), float(one.viscosity), precision("rotational"), sample=sample
+        )
+    if one.method == "rheometer":
+        aged = one.condition != "original"
+        return rheometer_reading(
+            float(one.temperature), float(one.modulus), float(one.phase_angle),
+            precision("rheometer residue" if aged else "rheometer"),
+            frequency_rad_s=10.0 if one.frequency is None else float(one.frequency),
+            as_written=f"{one.modulus.text} at {one.phase_angle.text}", sample=sample,
+        )  # fmt: skip
+    if one.method == "penetration":
+        return penetration_reading(
+            float(one.value), precision("penetration", float(one.value)),
+            temperature_c=25.0 if one.temperature is None else float(one.temperature),
+            as_written=one.value.text, sample=sample,
+        )  # fmt: skip
+    if one.method == "softening point":
+        return softening_point_reading(
+            float(one.value), precision("softening point"),
+            modified=certificate.modifier != "none", as_written=one.value.text, sample=sample,
+        )  # fmt: skip
     return None
+
+
+def _kinematic(
+    certificate: Certificate, one: KinematicCapillary | KinematicValue, sample: Sample
+) -> Reading:
+    density = certificate.density_15c_kgm3
+    if density is None:
+        raise MissingInput.of(
+            "density",
+            f"Lot {certificate.lot} has a kinematic viscosity and no density.",
+            "Enter the density of the certificate.",
+            field="density",
+        )
+    precision = precision_table().find("kinematic capillary")
+    at = float(one.temperature)
+    if isinstance(one, KinematicValue):
+        return kinematic_value_reading(
+            at, float(one.viscosity), density, precision, as_written=one.viscosity.text,
+            sample=sample,
+        )  # fmt: skip
+    bulbs = [Bulb(bulb.name, float(bulb.factor), float(bulb.time)) for bulb in one.bulbs]
+    if one.factor is not None and one.time is not None:
+        bulbs = [Bulb("", float(one.factor), float(one.time))]
+    return kinematic_capillary_reading(
+        at, bulbs, density, precision, average=one.average, sample=sample
+    )
