@@ -53,6 +53,34 @@ def test_plane_wall_with_convection(case: Case) -> None:
     assert found[-1, 0] == pytest.approx(case.expected, abs=WITHIN_C / 140)
 
 
+@every("EIG-", "SLAB2-EIG1")
+def test_first_mode_of_a_plane_wall(case: Case) -> None:
+    """Late in the cooling only the first eigenvalue is left: it is the rate of decay."""
+    one, other = (case["Bi"], 0.0) if "Bi" in case.inputs else (case["Bi1"], case["Bi2"])
+    late, later = np.array([1.0, 1.5])
+    run = conduct(
+        (Layer(1.0, 1.0, 1.0, 1.0, cells=10),),
+        Face(one, 0.0),
+        np.union1d(growing_times_s(late, STEPS), np.linspace(late, later, 21)),
+        bottom=Face(other, 0.0),
+    )
+    at = run.times_s[:, 0]
+    first, last = (run.mean_c[0, np.argmin(abs(at - time)), 0] for time in (late, later))
+    assert np.sqrt(np.log(first / last) / (later - late)) == pytest.approx(case.expected, rel=1e-3)
+
+
+@every("C1-")
+def test_one_term_of_a_plane_wall(case: Case) -> None:
+    """Middle of the wall late in the cooling: C1 exp(-eigenvalue^2 Fo)."""
+    root = next(row.expected for row in cases("EIG-") if row["Bi"] == case["Bi"])
+    run = conduct(
+        (Layer(1.0, 1.0, 1.0, 1.0, cells=10),), Face(case["Bi"], 0.0), growing_times_s(0.8, STEPS)
+    )
+    assert run.bottom_c[-1, 0] == pytest.approx(
+        case.expected * np.exp(-0.8 * root**2), abs=WITHIN_C / 140
+    )
+
+
 @every("SLAB1", "SLAB2-T", "SLAB2-M", "SLAB2-B")
 def test_slab_with_convection(case: Case) -> None:
     run = cooled_slab(case, case["L"] / 2, case["T0"], case["Tair"])
@@ -201,6 +229,18 @@ def test_plate_that_only_radiates(case: Case) -> None:
     run = conduct((layer,), face, np.linspace(0.0, 9000.0, 91))
     found = np.interp(-case["T2"], -run.mean_c[0, :, 0], run.times_s[:, 0])
     assert found == pytest.approx(case.expected, abs=1.0)
+
+
+@every("LUMP-RAMP")
+def test_thin_plate_under_air_that_cools(case: Case) -> None:
+    end, heat = case["t_s"], 1.0e6
+    air = case["Tair0"] + case["Tair_rate_K_per_h"] / 3600 * np.array([0.0, end])
+    layer = Layer(0.01, 5000.0, heat / 0.01, case["T0"])
+    run = conduct(
+        (layer,), Face(heat / case["tau_s"], Series(np.array([0.0, end]), air)),
+        np.linspace(0.0, end, STEPS),
+    )  # fmt: skip
+    assert run.mean_c[0, -1, 0] == pytest.approx(case.expected, abs=WITHIN_C)
 
 
 @every("SOM46")

@@ -55,6 +55,11 @@ def test_middle_of_a_layer_on_the_road(case: Case) -> None:
     assert twente_excess_k(case["t_min"]) == pytest.approx(case.expected, abs=case.tolerance)
 
 
+@pytest.mark.parametrize("case", cases("TERH-L2C1-EXC0", "TERH-L2C2-EXC0"), ids=str)
+def test_excess_at_laying_is_what_the_road_tests_began_with(case: Case) -> None:
+    assert twente_excess_k(0.01) == pytest.approx(case.expected, abs=case.tolerance + 2.0)
+
+
 @pytest.mark.parametrize("case", cases("TERH-L2C1-SLOPE", "TERH-L2C2-SLOPE"), ids=str)
 def test_how_fast_the_middle_of_a_layer_cools(case: Case) -> None:
     """The measured slope lies between a calm day on a warm base and wind on a cool one."""
@@ -102,7 +107,10 @@ def table_minutes(case: Case, wind_ms: float, sun_wm2: float) -> float:
     return float(rolling_time_s(mat, laid, end)) / 60
 
 
-ROLLING_MIN = {0.5: 4.0, 0.75: 6.0, 1.0: 8.0, 1.5: 12.0, 2.0: 15.0, 3.0: 15.0}
+ROLLING_MIN = {float(size): value(f"FOSTER-RT-{size}") for size in ("0.5", "0.75", "1.5", "2")} | {
+    1.0: 8.0,  # the table's own row between, from memory as the rest
+    3.0: 15.0,  # a cap
+}
 
 
 @pytest.mark.parametrize("case", cases("FOSTER-2", "FOSTER-3", "FOSTER-4", "FOSTER-5", "FOSTER-6",
@@ -142,6 +150,30 @@ def test_what_is_lost_before_the_first_roller_pass() -> None:
               DENSE, ASPHALT)  # fmt: skip
     waits = rolling_time_s(mat, value("PK-LAY"), value("PK-LAY") - value("PK-LOSS"))
     assert ((waits > 60.0) & (waits < 360.0)).all()
+
+
+def test_rolling_goes_on_below_the_usual_end() -> None:
+    """Eight tests ended at 62.9 C, not at 80 C: ours takes 1.5 to 2 times as long to get there.
+
+    So the end of rolling is an input with a doubt of its own, never a constant.
+    """
+    mat = Mat(np.array([0.05, 0.08]), 25.0, 20.0, mat_convection_wm2k(2.0), 0.0, 10.0,
+              DENSE, ASPHALT)  # fmt: skip
+    usual, real = (rolling_time_s(mat, value("PK-LAY"), end) for end in (80.0, value("PK-END")))
+    assert ((real / usual > 1.5) & (real / usual < 2.1)).all()
+
+
+def test_rule_of_thumb_from_plant_to_site() -> None:
+    """A trade rule says 5 to 25 F; a tarped load of ours loses that in 10 min to 2 h."""
+    least, most = (
+        kelvin_delta_from_fahrenheit_delta(value(f"LOAD-LOSS-{end}")) for end in ("LO", "HI")
+    )
+    faces = Faces(28.0, 20.0, 28.0, 7.5, 20.0)
+    lost = 140 * (
+        1 - retained_in_truck(np.array([600.0, 7200.0]), Box(5.4, 2.3, 0.9), faces, LOOSE)
+    )
+    assert 0.7 * least < lost[0] < most
+    assert least < lost[1] < 1.3 * most
 
 
 TARPED = {"TRIS-MIN": 4.0, "TRIS-MAX": 8.0}

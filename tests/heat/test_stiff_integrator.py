@@ -4,6 +4,8 @@ from __future__ import annotations
 
 import numpy as np
 import pytest
+from hypothesis import given, settings
+from hypothesis import strategies as st
 
 from advisor.heat import (
     BaseThermal,
@@ -132,6 +134,51 @@ def test_what_left_is_what_is_missing(slope: float, latent: float) -> None:
     run = conduct(layers, face, growing_times_s(3600.0, 40), bottom=Face(0.6, 4.0))
     crossed = run.left_top_jm2 + run.left_bottom_jm2
     assert (np.abs(run.stored_jm2 + crossed)[-1] < 1e-3 * np.abs(crossed)[-1]).all()
+
+
+_numbers = st.floats(0.3, 3.0)
+
+
+@settings(max_examples=60, deadline=None)
+@given(
+    st.tuples(st.floats(0.01, 0.3), st.floats(0.05, 2.0), st.floats(0.0, 0.01)),
+    st.tuples(_numbers, _numbers, st.floats(-20.0, 40.0)),
+    st.tuples(st.floats(0.0, 60.0), st.floats(0.0, 60.0), st.floats(0.0, 1.0)),
+    st.tuples(st.floats(0.0, 1e-3), st.sampled_from([0.0, 3.3e7]), st.floats(60.0, 2e4)),
+    st.sampled_from([None, 2.5]),
+    st.integers(4, 40),
+)
+def test_energy_is_conserved_in_every_run(
+    sizes: tuple[float, float, float], base: tuple[float, float, float],
+    faces: tuple[float, float, float], heat: tuple[float, float, float],
+    radius_m: float | None, steps: int,
+) -> None:  # fmt: skip
+    """To 0.1 % of what crossed, whatever the layers, the weather, the steps; half way too.
+
+    Wind and sun jump half way; the top radiates in part, and a silo's barrel is round.
+    """
+    lift_m, base_m, contact = sizes
+    conductivity, capacity, base_c = base
+    before, after, grey = faces
+    slope, latent, end_s = heat
+    layers = (
+        Layer(lift_m, 1.1, 2.2e6, 155.0, capacity_slope_per_k=slope, capacity_at_c=100.0),
+        Layer(
+            min(base_m, 2.0 if radius_m is None else radius_m - lift_m - 0.01), conductivity,
+            capacity * 1e6, base_c, contact_m2kw=contact, latent_jm3=latent, spacing="top",
+        ),
+    )  # fmt: skip
+    half = end_s / 2
+    knots = np.array([0.0, half, half, end_s])
+    top = Face(
+        Series(knots, np.array([before, before, after, after])), 5.0, grey, -15.0,
+        Series(knots, np.array([0.0, 300.0, 50.0, 0.0])),
+    )  # fmt: skip
+    times = np.union1d(growing_times_s(end_s, steps), [half])
+    run = conduct(layers, top, times, bottom=Face(0.8, 8.0), radius_m=radius_m)
+    crossed = run.left_top_jm2 + run.left_bottom_jm2
+    moved = np.abs(run.left_top_jm2) + np.abs(run.left_bottom_jm2)
+    assert (np.abs(run.stored_jm2 + crossed) <= 1e-3 * moved + 1e-6).all()
 
 
 def test_a_rising_capacity_is_the_one_of_the_mean_temperature() -> None:
