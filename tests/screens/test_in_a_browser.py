@@ -116,7 +116,7 @@ def test_another_job_is_chosen_by_keyboard(open_page, demo_address):
     page.locator("#shift-job").focus()
     page.keyboard.press("Enter")
     page.keyboard.press("ArrowDown")
-    page.keyboard.press("Enter")
+    page.keyboard.press("Space")
     expect(page.locator("h1")).not_to_have_text(before, timeout=WAIT)
 
 
