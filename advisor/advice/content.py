@@ -11,7 +11,7 @@ from advisor.binder import ViscosityCurve, Window
 from advisor.binder.blending import blend_curves
 from advisor.errors import MissingInput
 from advisor.records import Entry
-from advisor.settings.binders import certificate_curve, mixing_window
+from advisor.settings.binders import certificate_curve, certificate_sheet, mixing_window
 from advisor.settings.certificate import Certificate
 
 # A tank with more than this share of a second lot is a blend nobody has tested.
@@ -63,13 +63,22 @@ def binder_in_tank(facts: PlantFacts, tank: str, at: datetime) -> BinderState:
     blended = len(content.shares) > 1 and content.shares[1][1] >= _BLEND_SHARE
     curve = _curve(content, certificates)
     window, refused = mixing_window(certificates, curve)
+    if window is None and not modified:
+        raise MissingInput.of(
+            "no-mixing-window",
+            f"No mixing temperature can be read from lot {content.shares[0][0]}. "
+            + " ".join(filter(None, (certificate_sheet(one).refused for one in certificates))),
+            "Measure the viscosity at two temperatures, or correct the certificate.",
+            field=tank,
+        )
+    noted = () if curve is None else curve.notes
     lots = " and ".join(f"{share:.0%} {lot}" for lot, share in content.shares if share >= 0.005)
     return BinderState(
         content=content,
         certificates=certificates,
         curve=curve,
         mixing=window,
-        refused=refused,
+        refused=(*refused, *noted),
         modified=modified,
         provisional=blended,
         words=lots if len(content.shares) > 1 else f"lot {content.shares[0][0]}",

@@ -126,7 +126,7 @@ from advisor.binder.rotational import (
     shear_rate_per_s,
     torque_share,
 )
-from advisor.binder.selection import SheetCurve, curve_of_sheet, select_for_mixing
+from advisor.binder.selection import SheetCurve, curve_of_sheet, off_the_line, select_for_mixing
 from advisor.binder.tank import Bound, TankRange, flash_margin_k, pumping_temperature_c, tank_range
 from advisor.binder.vft import VftFit, fit_vft
 from advisor.binder.windows import ViscosityTarget, Window, equiviscous_window, window_for
@@ -213,6 +213,7 @@ __all__ = [
     "loglog_viscosity",
     "lowered_window",
     "mixing_hardening",
+    "off_the_line",
     "original_constants",
     "original_prior",
     "oxidation_energy_j_mol",

@@ -20,6 +20,8 @@ Floats = NDArray[np.float64]
 _CHANCE = 0.02
 # Odds from which a mistake is proposed.
 _ODDS = 10.0
+# A mistake this much less likely than the likeliest one is no longer named. Common practice.
+_RIVAL = 20.0
 _FACTORS: tuple[tuple[float, str], ...] = (
     (0.1, "ten times too high: poise read as pascal-second, or a slipped decimal point"),
     (10.0, "ten times too low: pascal-second read as poise, or a slipped decimal point"),
@@ -75,13 +77,13 @@ def typing_doubts(readings: Sequence[Reading], prior: AvtsPrior) -> tuple[Doubt,
             doubt = Doubt(None, f"Every viscosity: {sentence}", None, None, 0.0)
             trials.append((_evidence(tried, prior), doubt))
     chance = _CHANCE / max(len(trials), 1)
+    best = max((evidence for evidence, _ in trials), default=-np.inf)
     found = []
-    for evidence, doubt in trials:
-        with np.errstate(over="ignore"):
-            odds = float(np.exp(min(evidence - as_typed, 600.0)) * chance)
-        if np.isfinite(evidence) and odds >= _ODDS:
+    for evidence, doubt in sorted(trials, key=lambda trial: -trial[0]):
+        odds = float(np.exp(min(evidence - as_typed, 600.0)) * chance)
+        if odds >= _ODDS and evidence >= best - np.log(_RIVAL):
             found.append(replace(doubt, odds=odds))
-    return tuple(sorted(found, key=lambda doubt: -doubt.odds))
+    return tuple(found)
 
 
 def unit_confusion(readings: Sequence[Reading], density_kgm3: float) -> str:

@@ -19,11 +19,14 @@ from advisor.binder.fit import (
 from advisor.binder.modifiers import Modifier
 from advisor.binder.readings import LINE_FROM_C, Reading, error_correlation
 from advisor.binder.vft import VftFit, fit_vft
-from advisor.errors import MissingInput, OutsideValidity
+from advisor.errors import FaultyInput, MissingInput, OutsideValidity
 
 # Two temperatures closer than this do not fix a slope: the grade is then asked as well. Common
 # practice, no source.
 _LEAST_SPAN_K = 10.0
+# A line that has this viscosity outside these temperatures is none of any paving binder. Common
+# practice, no source.
+_BELIEVED_PAS, _BELIEVED_C = 0.17, (90.0, 250.0)
 # Methods whose viscosity comes from a conversion.
 _CONVERTED = ("penetration", "softening point", "rheometer")
 
@@ -59,7 +62,7 @@ def select_for_mixing(
     Source: ASTM D2493 section 5 (looked up): below 60 C the consistency rises above the line;
     aged residue is another binder.
     """
-    first = tuple(_marked(one, _misplaced(one, melting_c)) for one in readings)
+    first = tuple(_marked(one, off_the_line(one, melting_c)) for one in readings)
     measured = [one for one in first if one.usable and one.method not in _CONVERTED]
     if _span_k(measured) < _LEAST_SPAN_K:
         return first
@@ -103,9 +106,19 @@ def curve_of_sheet(
     if not usable and prior is not None:
         curve = prior.curve().noted("Nothing was measured: a wide band of what its grade can be.")
         return SheetCurve(chosen, curve, None, None, None, "No reading to judge.")
-    fit = _fit(usable, None if enough else prior, same_laboratory)
+    try:
+        fit = _fit(usable, None if enough else prior, same_laboratory)
+    except FaultyInput as error:
+        return SheetCurve(chosen, None, None, None, None, "", str(error))
     suspicion = suspect_reading(fit)
     curve = fit.curve()
+    mixed_c = float(curve.temperature_c(_BELIEVED_PAS))
+    if not _BELIEVED_C[0] <= mixed_c <= _BELIEVED_C[1]:
+        refused = (
+            f"The readings give no believable line ({_BELIEVED_PAS:g} Pa.s at {mixed_c:.0f} C): "
+            "one of them is wrong."
+        )
+        return SheetCurve(chosen, None, fit, suspicion, None, _quality(fit), refused)
     if not enough:
         curve = curve.noted(
             "The readings alone do not fix a curve; the usual curves of the grade fill the gap and "
@@ -120,7 +133,13 @@ def _marked(reading: Reading, why: str) -> Reading:
     return replace(reading, unusable=(*reading.unusable, why))
 
 
-def _misplaced(reading: Reading, melting_c: float | None) -> str:
+def off_the_line(reading: Reading, melting_c: float | None = None) -> str:
+    """Why a sound reading does not belong on the mixing line, in a sentence; empty where it does.
+
+    Args:
+        reading: the reading.
+        melting_c: top of the melting range of a wax in the binder [C]; none without wax.
+    """
     if reading.sample.condition != "original":
         return "Measured on aged or recovered binder, not on the binder in the tank."
     if reading.method not in _CONVERTED and reading.temperature_c < LINE_FROM_C:

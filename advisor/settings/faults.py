@@ -69,7 +69,7 @@ _NEEDS = {
 
 def _fault(error: Any, model: type[BaseModel], source: YamlSource, above: Steps) -> Fault:
     inside: Steps = tuple(error["loc"])
-    steps = (*above, *inside)
+    steps = _as_written((*above, *inside), source, error["type"] == "missing")
     kind, given = error["type"], error["input"]
     written = source.place(steps).text if steps in source.places else ""
     context = error.get("ctx", {})
@@ -90,6 +90,15 @@ def _fault(error: Any, model: type[BaseModel], source: YamlSource, above: Steps)
         return Fault(
             code, problem, remedy, source.file, place.line, place.column, field_name(steps), name
         )
+    elif kind == "union_tag_invalid":
+        words = _literal_words(context.get("expected_tags", ""))
+        tag, key = str(context.get("tag", "")), context.get("discriminator", "").strip("'")
+        code, problem = "unknown-word", f"'{tag}' is no {key} known here."
+        remedy = nearest(tag, words)
+    elif kind == "union_tag_not_found":
+        key = context.get("discriminator", "").strip("'")
+        code, problem = "missing", f"'{key}' is missing."
+        remedy = f"Add '{key}' to say which of its kinds it is."
     elif kind == "literal_error":
         words = _literal_words(context.get("expected", ""))
         code, problem = "unknown-word", f"'{written or given}' is not one of the words known here."
@@ -113,6 +122,18 @@ def _fault(error: Any, model: type[BaseModel], source: YamlSource, above: Steps)
         field_name(steps),
         written,
     )
+
+
+def _as_written(steps: Steps, source: YamlSource, last_is_missing: bool) -> Steps:
+    """The steps as the file has them, without the kind a model was told apart by."""
+    found: Steps = ()
+    for at, step in enumerate(steps):
+        kind = isinstance(step, str) and bool(found) and isinstance(found[-1], int)
+        named = last_is_missing and at == len(steps) - 1
+        if kind and not named and (*found, step) not in source.places:
+            continue
+        found = (*found, step)
+    return found
 
 
 def _yaml_words(value: Any) -> str:
@@ -149,12 +170,30 @@ def _model_at(model: type[BaseModel], inside: Steps) -> type[BaseModel] | None:
     """The model that reads the value ``inside`` a value read by ``model``."""
     kind: Any = model
     for step in inside:
+        told_apart = _model_of_kind(kind, step)
+        if told_apart is not None:
+            kind = told_apart
+            continue
         found = _model_in(kind)
         if found is None or isinstance(step, int) or step not in found.model_fields:
             kind = _part_of(kind)
         else:
             kind = found.model_fields[step].annotation
     return _model_in(kind)
+
+
+def _model_of_kind(kind: Any, word: str | int) -> type[BaseModel] | None:
+    """The model of a union whose kinds are told apart by the ``word`` one of its keys holds."""
+    if get_origin(kind) is Annotated:
+        return _model_of_kind(get_args(kind)[0], word)
+    if get_origin(kind) not in (Union, types.UnionType) or not isinstance(word, str):
+        return None
+    for part in get_args(kind):
+        model = _model_in(part)
+        fields = model.model_fields.values() if model else ()
+        if any(word in get_args(known.annotation) for known in fields):
+            return model
+    return None
 
 
 def _model_in(kind: Any) -> type[BaseModel] | None:

@@ -141,7 +141,7 @@ def test_sound_readings_are_left_alone() -> None:
 
 def test_a_bend_is_seen_by_the_line_and_met_by_the_third_law() -> None:
     t = np.array([60.0, 90.0, 135.0, 165.0])
-    eta = viscosity_vft(t, -1.2, 560.0, -20.0)
+    eta = viscosity_vft(t, -4.35, 660.0, -31.0)
     line = fit_avts(t, eta, np.full(4, 0.03))
     assert line.probability < 0.05
     assert fit_vft(t, eta, 0.03).chi2 < 1e-6

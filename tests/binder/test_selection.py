@@ -97,7 +97,7 @@ def test_rubber_gets_no_line_but_its_readings_are_kept() -> None:
 def test_a_bend_offers_the_third_law_and_a_line_does_not() -> None:
     t = (60.0, 90.0, 135.0, 165.0)
     bent = [
-        viscosity_value_reading(at, float(viscosity_vft(at, -1.2, 560.0, -20.0)), ROTATIONAL,
+        viscosity_value_reading(at, float(viscosity_vft(at, -4.35, 660.0, -31.0)), ROTATIONAL,
                                 sample=Sample(laboratory=f"laboratory {at:g}"))
         for at in t
     ]  # fmt: skip

@@ -1,0 +1,92 @@
+"""Sheets beside one another: a change of source, and the drift of successive lots of one source."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+
+from advisor.binder import (
+    DriftChart,
+    SourceChange,
+    ViscosityCurve,
+    compare_curves,
+    drift_chart,
+)
+from advisor.errors import MissingInput
+from advisor.settings.binder_tables import viscosity_target
+from advisor.settings.binders import certificate_sheet
+from advisor.settings.certificate import Certificate
+
+
+def compare(older: Certificate, newer: Certificate) -> SourceChange:
+    """How far every temperature shifts from ``older`` to ``newer``, and whether tests can see it.
+
+    Where one laboratory measured both only its own repeatability counts. Raises MissingInput where
+    one of the two gives no curve.
+    """
+    same = older.laboratory == newer.laboratory
+    curves = []
+    for one in (older, newer):
+        sheet = certificate_sheet(one, same)
+        if sheet.curve is None:
+            raise MissingInput.of(
+                "no-curve",
+                f"Lot {one.lot} gives no curve to compare: {sheet.refused}",
+                "Compare the suppliers' ranges, or measure the viscosity at two temperatures.",
+                value=one.lot,
+            )
+        curves.append(sheet.curve)
+    asked = [(name, viscosity_target(name).target) for name in ("mixing", "compaction", "pumping")]
+    return compare_curves(curves[0], curves[1], asked, same_laboratory=same)
+
+
+@dataclass(frozen=True, eq=False)
+class SourceHistory:
+    """Successive certificates of one source: mixing temperatures [C] in date order, and drift.
+
+    ``chart`` is None where there are too few; ``words`` then says so. ``left_out`` names lots
+    whose readings alone fix no curve.
+    """
+
+    source: str
+    lots: tuple[str, ...]
+    days: tuple[str, ...]
+    mixing_c: tuple[float, ...]
+    chart: DriftChart | None
+    words: str
+    left_out: tuple[str, ...]
+
+
+def histories(certificates: Sequence[Certificate]) -> tuple[SourceHistory, ...]:
+    """The history of every source with two certificates or more, oldest certificate first."""
+    by_source: dict[str, list[Certificate]] = {}
+    for one in sorted(certificates, key=lambda one: (one.tested_on, one.lot)):
+        by_source.setdefault(f"{one.source}, {one.grade}", []).append(one)
+    return tuple(_history(name, sheets) for name, sheets in by_source.items() if len(sheets) > 1)
+
+
+def _history(source: str, sheets: Sequence[Certificate]) -> SourceHistory:
+    wanted = viscosity_target("mixing").target
+    kept = [(one, curve) for one in sheets if (curve := _measured_curve(one)) is not None]
+    values = tuple(float(curve.temperature_c(wanted)) for _, curve in kept)
+    test_sd = max((float(curve.temperature_sd_k(wanted)) for _, curve in kept), default=0.0)
+    try:
+        chart: DriftChart | None = drift_chart(values, test_sd, "C")
+        words = chart.sentence if chart else ""
+    except MissingInput as error:
+        chart, words = None, str(error)
+    return SourceHistory(
+        source,
+        tuple(one.lot for one, _ in kept),
+        tuple(one.tested_on.isoformat() for one, _ in kept),
+        values,
+        chart,
+        words,
+        tuple(one.lot for one in sheets if one.lot not in {each.lot for each, _ in kept}),
+    )
+
+
+def _measured_curve(certificate: Certificate) -> ViscosityCurve | None:
+    """The curve within one laboratory, where readings alone fix it."""
+    sheet = certificate_sheet(certificate, True)
+    return sheet.curve if sheet.fit is not None and not sheet.fit.used_prior else None
