@@ -83,12 +83,20 @@ def heat_path_words(advice: Advice, readings: Sequence[Reading], units: UnitSyst
         for one in advice.path
     )
     now = ", ".join(
-        f"{STATIONS[one.point]} {degrees(one.value_c, units)}"
+        f"{STATIONS[one.point]} {degrees(one.value_c, units)}{_said(one, advice)}"
         for one in readings
         if one.point in STATIONS and one.value_c is not None
     )
     words = f"Window in {shown_unit('temperature', units)}: {stations}."
     return f"{words} Latest readings: {now}." if now else words
+
+
+def _said(reading: Reading, advice: Advice) -> str:
+    setpoint = advice.setpoint(reading.point)
+    if setpoint is None:
+        return ""
+    verdict = verdict_of(reading.value_c, setpoint.low_c, setpoint.high_c, reading.doubt)
+    return {"inside": "", "unknown": f" ({reading.doubt})"}.get(verdict, f" ({verdict})")
 
 
 def _place(path: Sequence[PathPoint], point: Point) -> PathPoint | None:
