@@ -200,7 +200,9 @@ def refuse_impossible(operation: Operation) -> None:
     within("air_c", operation.air.air_c, -40.0, 60.0, "Give the air temperature in the shade.")
     within("relative_humidity", operation.air.relative_humidity, 0.0, 1.0, "Give a fraction.")
     within("pressure_pa", operation.air.pressure_pa, 5e4, 1.1e5, "Give the air pressure.")
-    within("discharge_c", operation.discharge_c, 60.0, 250.0, "Give the mix temperature.")
+    # stone that is dried alone may be hotter than any mix
+    most = 250.0 if np.any(_array(feed.binder_of_mix) > 0.0) or feed.rap else 450.0
+    within("discharge_c", operation.discharge_c, 60.0, most, "Give the mix temperature.")
     within("stack_c", operation.stack_c, 40.0, 400.0, "Give the gas temperature.")
     within("air_ratio", operation.air_ratio, 1.0, 20.0, "Give all air over the air needed.")
     within("casing_of_net", operation.casing_of_net, 0.0, 0.5, "Give a share of net heat.")

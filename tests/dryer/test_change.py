@@ -85,11 +85,19 @@ def test_a_season_of_overheating() -> None:
 
 
 def test_ten_degrees_at_the_reference_plant() -> None:
-    # 13.6 and 15.9 and 18.3 MJ/t with 0.98 kJ/(kg K) for the last degrees: ours is 0.98 at 165 C
+    # 12.6, 14.8 and 17.1 MJ/t for stack rises of 0, 5 and 10 C, worked out apart from this code for
+    # stone of 0.90 kJ/(kg K) at any temperature
+    even = overheating_cost(base(), 10.0, RISE).gross_j_kg
+    assert [float(one) / 1000.0 for one in (even.low, even.central, even.high)] == pytest.approx(
+        [12.6, 14.8, 17.1], abs=0.1
+    )
+    # 13.6 with 0.98 kJ/(kg K) for the last degrees: ours is 0.98 at 165 C. What the gas takes along
+    # does not depend on the stone.
     cost = overheating_cost(real_stone(), 10.0, RISE)
     assert float(cost.gross_j_kg.low) / 1000.0 == pytest.approx(13.6, abs=0.1)
-    assert float(cost.gross_j_kg.central) / 1000.0 == pytest.approx(15.9, abs=0.15)
-    assert float(cost.gross_j_kg.high) / 1000.0 == pytest.approx(18.3, abs=0.2)
+    for side in ("central", "high"):
+        gas = [float(getattr(one, side) - one.low) for one in (cost.gross_j_kg, even)]
+        assert gas[0] == pytest.approx(gas[1], rel=0.02)
     # gas grows by 3.0, 4.9, 6.7 % per 10 C: what a plant short of fan loses
     exhaust = cost.exhaust_of_flow
     assert [float(100 * part) for part in (exhaust.low, exhaust.central, exhaust.high)] == (
