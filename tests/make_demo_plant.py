@@ -424,6 +424,57 @@ def weather_file() -> bytes:
     return ("\n".join(lines) + "\n").encode()
 
 
+def forecast_files(weather: bytes) -> dict[str, bytes]:
+    """One forecast each morning at 04:00 UTC for 42 hours, wrong by more the further ahead."""
+    seen = [line.split(",") for line in weather.decode().splitlines()[2:]]
+    files = {}
+    for first in range(5, len(seen), 24):  # the file begins at 23:00 UTC
+        issued = seen[first][0]
+        noise = Noise(f"forecast {issued}")
+        air_off, wind_off, cloud_off = noise.normal(0.6), noise.normal(0.1), noise.normal(8)
+        lines = [
+            "# Invented forecast for Harrow Fen plant (invented)",
+            "issued,time,air (C),wind (m/s),cloud (%),dew_point (C),rain",
+        ]
+        for ahead, (stamp, air, wind, cloud, dew, wet) in enumerate(seen[first : first + 43]):
+            grows = 0.4 + ahead / 24
+            warm = float(air) + grows * air_off + noise.normal(0.2)
+            wind_ms = max(float(wind) * (1 + grows * wind_off), 0.5)
+            sky = min(max(float(cloud) + grows * cloud_off, 0), 100)
+            below = float(air) - float(dew)
+            lines.append(
+                f"{issued},{stamp},{warm:.1f},{wind_ms:.1f},{sky:.0f},{warm - below:.1f},{wet}"
+            )
+        files[f"series/forecast_{issued[:10]}.csv"] = ("\n".join(lines) + "\n").encode()
+    return files
+
+
+def airport_file(weather: bytes) -> bytes:
+    """Reports of an invented airport some way off: hourly, ten minutes before the hour, METAR."""
+    noise = Noise("airport")
+    lines = ["# Invented reports of an invented airport; the letters belong to none"]
+    for line in weather.decode().splitlines()[2:]:
+        stamp, air, wind, cloud, dew, wet = line.split(",")
+        at = datetime.fromisoformat(stamp) - timedelta(minutes=10)
+        warm, damp = round(float(air) - 0.4 + noise.normal(0.3)), round(float(dew) - 0.4)
+        knots = round(max(float(wind) * 1.05 + noise.normal(0.4), 0) / 0.514444)
+        oktas = round(float(cloud) / 12.5)
+        layer = "NSC" if oktas == 0 else f"{('FEW', 'SCT', 'BKN', 'OVC')[_layer(oktas)]}018"
+        shown = "/".join(
+            f"{'M' if one < 0 else ''}{abs(one):02d}" for one in (warm, min(damp, warm))
+        )
+        rain = "-RA " if wet == "yes" else ""
+        lines.append(
+            f"{at:%Y%m%d%H%M} METAR XHFN {at:%d%H%M}Z {230 + 10 * (knots % 4):03d}{knots:02d}KT "
+            f"9999 {rain}{layer} {shown} Q1011="
+        )
+    return ("\n".join(lines) + "\n").encode()
+
+
+def _layer(oktas: int) -> int:
+    return 0 if oktas <= 2 else 1 if oktas <= 4 else 2 if oktas <= 7 else 3
+
+
 def exports() -> tuple[dict[str, bytes], dict[str, object], bytes]:
     """Every file of the demo by its path in the plant folder, the truth, and its minutes."""
     rows, loads = simulate()
@@ -436,6 +487,8 @@ def exports() -> tuple[dict[str, bytes], dict[str, object], bytes]:
     files["logs/tickets.csv"] = tickets_file(loads)
     files["logs/arrivals.csv"], deliveries = arrivals_file(loads)
     files["series/weather.csv"] = weather_file()
+    files |= forecast_files(files["series/weather.csv"])
+    files["series/airport_2026-10.txt"] = airport_file(files["series/weather.csv"])
     truth = {
         "about": "Invented. What the simulator of demo_plant knows and its exports do not say.",
         "start": START.isoformat(),

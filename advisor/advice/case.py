@@ -40,14 +40,22 @@ def path_case(situation: Situation) -> PathCase:
     weather, job, mix = situation.weather, situation.job, situation.mix
     assert weather is not None  # noqa: S101 - asked for only where nothing is missing
     plant = situation.facts.folder.plant
-    station = load_table("terrain").row(plant.weather_terrain)
+    station = load_table("terrain").row(weather.terrain or plant.weather_terrain)
     site = load_table("terrain").row(job.terrain)
     wind = float(
-        wind_at_height_ms(weather.wind_ms, _terrain(site), station_terrain=_terrain(station))
+        wind_at_height_ms(
+            weather.wind_ms,
+            _terrain(site),
+            station_height_m=weather.wind_height_m,
+            station_terrain=_terrain(station),
+        )
     )
     sun, sun_sd = _sun(situation, weather)
     sky = float(sky_temperature_c(weather.air_c, weather.dew_point_c, weather.cloud_of_sky))
     base = _base(situation)
+    off_air, off_wind = 0.0, 0.0
+    if weather.foretold:
+        off_air, off_wind = spread("forecast air")["sd"], spread("forecast wind")["log_sd"]
     wet = situation.base_condition == "wet" or (
         weather.rain and situation.base_condition != "frozen"
     )
@@ -55,7 +63,7 @@ def path_case(situation: Situation) -> PathCase:
         base_c, base_sd = situation.base_reading_c, spread("base surface measured")["sd"]
     else:
         surface = base_surface_c(weather.air_c, sun, sky, mat_convection_wm2k(wind))
-        base_c, base_sd = float(surface.base_c), float(surface.sd_k)
+        base_c, base_sd = float(surface.base_c), math.hypot(float(surface.sd_k), off_air)
     family = load_table("mix_families").row(mix.family)
     end_c, end_sd = rolling_end(situation)
     loss = spread("paving loss")
@@ -72,9 +80,9 @@ def path_case(situation: Situation) -> PathCase:
     heat = float(mix_heat_jkgk(family["heat_at"], mix.binder_content))
     return PathCase(
         air_c=weather.air_c,
-        air_sd_k=spread("air")["sd"],
+        air_sd_k=math.hypot(spread("air")["sd"], off_air),
         wind_ms=max(wind, _CALM_MS),
-        wind_log_sd=site["wind_spread"],
+        wind_log_sd=math.hypot(site["wind_spread"], off_wind),
         sun_wm2=sun,
         sun_sd_wm2=sun_sd,
         sky_c=sky,

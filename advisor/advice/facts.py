@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from datetime import UTC, datetime, timedelta
+from datetime import datetime, timedelta
 from functools import cached_property
 from typing import TYPE_CHECKING
 
@@ -23,7 +23,11 @@ Floats = NDArray[np.float64]
 
 @dataclass(frozen=True)
 class Weather:
-    """Weather at one moment: air and dew point [C], wind [m/s] as the station has it, cloud [1]."""
+    """Weather at one moment: air and dew point [C], wind [m/s], cloud [1], and who tells it.
+
+    The wind is as it was taken, ``wind_height_m`` above the ground in country called ``terrain``;
+    None is that of the plant's own station. ``foretold`` weather has not been seen.
+    """
 
     at: datetime
     age_s: float
@@ -32,6 +36,10 @@ class Weather:
     cloud_of_sky: float
     dew_point_c: float
     rain: bool
+    origin: str = "weather file"
+    wind_height_m: float = 10.0
+    terrain: str | None = None
+    foretold: bool = False
 
 
 @dataclass(frozen=True)
@@ -56,9 +64,9 @@ class Series:
 class PlantFacts:
     """All that advice is made of.
 
-    ``known_at`` limits records to what was recorded by then; None means everything. ``weather``
-    and ``log`` are frames as the logs room returns them, the log with its marks; None where the
-    plant has none. ``units`` are those of the sentences.
+    ``known_at`` limits records and weather to what was known by then; None means everything.
+    ``weather``, ``metar``, ``forecast`` and ``log`` are frames as the logs room returns them, the
+    log with its marks; None where the plant has none. ``units`` are those of the sentences.
     """
 
     folder: PlantFolder
@@ -67,6 +75,8 @@ class PlantFacts:
     log: pd.DataFrame | None = None
     known_at: datetime | None = None
     units: UnitSystem = "si"
+    metar: pd.DataFrame | None = None
+    forecast: pd.DataFrame | None = None
 
     def held(self, kind: str, subject: str, at: datetime) -> Entry | None:
         """The fact of ``kind`` about ``subject`` in force ``at``, as known."""
@@ -88,24 +98,6 @@ class PlantFacts:
         on = [run for run in runs if run.fact.until > at]
         return on[-1] if on else None
 
-    def weather_at(self, at: datetime) -> Weather | None:
-        """Weather at ``at``, the latest observation not older than config/defaults.yaml allows."""
-        oldest = load_table("defaults").row("weather age")["most"]
-        if self.weather is None or self.weather.empty:
-            return None
-        place = int(np.searchsorted(self._weather_s, at.timestamp(), side="right")) - 1
-        if place < 0 or at.timestamp() - self._weather_s[place] > oldest:
-            return None
-        row = self.weather.iloc[place]
-        air, wind, cloud, dew = (
-            float(row[name]) for name in ("air_c", "wind_ms", "cloud_of_sky", "dew_point_c")
-        )
-        if not np.all(np.isfinite([air, wind, cloud, dew])):
-            return None
-        seen = datetime.fromtimestamp(float(self._weather_s[place]), UTC)
-        age = (at - seen).total_seconds()
-        return Weather(seen, age, air, wind, cloud, dew, bool(row["rain"]))
-
     def series(self, signal: str) -> Series | None:
         """The readings of ``signal``, those not believed left out; None where not logged."""
         if self.log is None or signal not in self.log.columns:
@@ -124,16 +116,12 @@ class PlantFacts:
         )
 
     @cached_property
-    def _weather_s(self) -> Floats:
-        assert self.weather is not None  # noqa: S101 - asked for only where there is weather
-        return _seconds(self.weather)
-
-    @cached_property
     def _log_s(self) -> Floats:
         assert self.log is not None  # noqa: S101 - asked for only where there is a log
-        return _seconds(self.log)
+        return seconds_of(self.log)
 
 
-def _seconds(frame: pd.DataFrame) -> Floats:
+def seconds_of(frame: pd.DataFrame) -> Floats:
+    """Times of the rows of ``frame`` [s since 1970, UTC]."""
     times: Floats = frame["time"].astype("datetime64[us, UTC]").astype("int64").to_numpy() / 1e6
     return times

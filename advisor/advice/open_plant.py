@@ -25,7 +25,7 @@ def open_plant(path: str | Path, latest_only: bool = False) -> PlantFacts:
     Raises FaultyInput with every fault of the folder. A plant without a log or weather file opens
     all the same; advice then says what it lacks.
     """
-    from advisor.logs import read_kind
+    from advisor.logs import read_forecast, read_kind, read_metar
     from advisor.logs.cleaning import mark_faults
 
     folder = read_plant(path)
@@ -33,7 +33,9 @@ def open_plant(path: str | Path, latest_only: bool = False) -> PlantFacts:
     weather, log = (_frame(read_kind, folder, kind) for kind in ("weather", "plant_log"))
     if log is not None and not latest_only:
         log = mark_faults(log)
-    return PlantFacts(folder, records, weather, log)
+    metar, _ = read_metar(folder)
+    forecast, _ = read_forecast(folder)
+    return PlantFacts(folder, records, weather, log, metar=metar, forecast=forecast)
 
 
 def _frame(

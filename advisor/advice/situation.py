@@ -9,12 +9,13 @@ from datetime import datetime
 from advisor.advice.content import BinderState, binder_in_tank
 from advisor.advice.facts import PlantFacts, Weather
 from advisor.advice.result import InputUsed
+from advisor.advice.weather import weather_told
 from advisor.errors import AdvisorError
 from advisor.records import Entry
 from advisor.settings.mixes import Job, Mix
 from advisor.settings.plant import Silo, Tank
 from advisor.settings.tables import load_table
-from advisor.units import shown
+from advisor.units import from_si, shown
 
 
 @dataclass(frozen=True, eq=False)
@@ -67,7 +68,7 @@ def gather_situation(
     if not tank and not on:
         noted.assume("tank", fed.name, "first tank the mix may be fed from")
     binder = _binder(facts, fed, at, noted)
-    weather = _weather(facts, at, noted)
+    weather = _weather(facts, chosen, at, noted)
     base_c, condition = _base(facts, chosen, at, noted)
     rate, silo_kg, hold = _silo(facts, silo, on, at, noted)
     moisture = noted.moisture(mix.moisture_from, "stone moisture")
@@ -148,24 +149,36 @@ def _binder(facts: PlantFacts, tank: Tank, at: datetime, noted: _Notes) -> Binde
     return binder
 
 
-def _weather(facts: PlantFacts, at: datetime, noted: _Notes) -> Weather | None:
-    weather = facts.weather_at(at)
-    if weather is None:
+def _weather(facts: PlantFacts, job: Job, at: datetime, noted: _Notes) -> Weather | None:
+    told = weather_told(facts, at, job.code)
+    if not told:
         noted.missing.append(
-            "The weather is not known: there is no observation of the last hour and a half. "
-            "Bring the weather file up to date or enter it."
+            "The weather is not known: nothing was seen in the last hour and a half, and no "
+            "forecast tells it. Bring the weather file up to date, or record what is seen "
+            "('advisor records import', kind weather)."
         )
         return None
+    taken, *others = told
+    noted.plain("weather", _weather_words(taken, noted), taken.origin, taken.age_s)
+    for other in others:
+        if not other.foretold:
+            noted.plain("weather also", _weather_words(other, noted), other.origin, other.age_s)
+    return taken
+
+
+def _weather_words(weather: Weather, noted: _Notes) -> str:
     rain = ", rain" if weather.rain else ""
-    noted.plain(
-        "weather",
-        f"air {noted.shown(weather.air_c, 'temperature')}, "
-        f"wind {noted.shown(weather.wind_ms, 'speed')} at 10 m, "
-        f"cloud {weather.cloud_of_sky:.0%}{rain}",
-        "weather file",
-        weather.age_s,
+    in_ft = noted.facts.units == "us"
+    height = (
+        f"{from_si(weather.wind_height_m, 'ft', 'length'):.0f} ft"
+        if in_ft
+        else f"{weather.wind_height_m:g} m"
     )
-    return weather
+    return (
+        f"air {noted.shown(weather.air_c, 'temperature')}, "
+        f"wind {noted.shown(weather.wind_ms, 'speed')} at {height}, "
+        f"cloud {weather.cloud_of_sky:.0%}{rain}"
+    )
 
 
 def _base(facts: PlantFacts, job: Job, at: datetime, noted: _Notes) -> tuple[float | None, str]:

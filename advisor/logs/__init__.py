@@ -17,8 +17,10 @@ _HOME = {
     "believed": "cleaning",
     "mark_faults": "cleaning",
     "read_export": "intake",
+    "read_forecast": "weather_forecast",
     "read_kind": "plant_log",
     "read_logs": "plant_log",
+    "read_metar": "weather_reports",
     "write_report": "report",
     "write_set_aside": "report",
 }

@@ -15,7 +15,6 @@ from advisor.logs.intake import Intake, read_export
 from advisor.logs.report import IntakeReport, SetAsideRow, refused_report
 from advisor.logs.signals import SHAPES, SourceKind
 from advisor.settings.folder import PlantFolder
-from advisor.settings.signals import LogSource
 
 
 @dataclass(frozen=True)
@@ -91,7 +90,7 @@ def read_kind(
     intakes: list[Intake] = []
     reports: list[IntakeReport] = []
     for source in folder.signals.of_kind(kind):
-        for path in _files(folder.path, source):
+        for path in files_of(folder.path, source.files):
             try:
                 intake = read_export(path, source, folder.plant.time_zone)
             except AdvisorError as error:
@@ -105,18 +104,19 @@ def read_kind(
     )
 
 
-def _files(folder: Path, source: LogSource) -> list[Path]:
-    pattern = Path(source.files)
+def files_of(folder: Path, files: str) -> list[Path]:
+    """The files in ``folder`` that the pattern ``files`` of signals.yaml names, in order."""
+    pattern = Path(files)
     if pattern.is_absolute() or ".." in pattern.parts:
         raise FaultyInput(
             Fault(
                 "outside-folder",
-                f"'{source.files}' leads out of the plant folder.",
+                f"'{files}' leads out of the plant folder.",
                 "Name the files relative to the plant folder.",
                 file="signals.yaml",
             )
         )
-    return sorted(path for path in folder.glob(source.files) if path.is_file())
+    return sorted(path for path in folder.glob(files) if path.is_file())
 
 
 def _joined(intakes: list[Intake], key: str) -> tuple[pd.DataFrame, list[IntakeReport]]:

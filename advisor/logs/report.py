@@ -72,6 +72,10 @@ class IntakeReport:
         together = tuple(sorted((*self.set_aside, *rows), key=lambda row: row.line))
         return replace(self, rows_used=self.rows_used - len(rows), set_aside=together)
 
+    def with_notes(self, notes: tuple[str, ...]) -> IntakeReport:
+        """The report with ``notes`` added."""
+        return replace(self, notes=(*self.notes, *notes))
+
     def as_dict(self) -> dict[str, object]:
         """Every part by name, for programs."""
         return {**asdict(self), "refused": self.refused.as_dict() if self.refused else None}

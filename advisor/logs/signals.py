@@ -11,7 +11,7 @@ from typing import Literal
 
 from advisor.glossary import QUANTITIES, Quantity
 
-SourceKind = Literal["plant_log", "tickets", "arrivals", "weather"]
+SourceKind = Literal["plant_log", "tickets", "arrivals", "weather", "forecast"]
 
 # Signal to glossary entry; "<n>" stands for a number.
 _QUANTITY_OF = {
@@ -33,7 +33,7 @@ _QUANTITY_OF = {
     "cloud_of_sky": "cloud_of_sky",
     "dew_point_c": "dew_point_c",
 }
-_TEXTS = {"mix_id", "ticket", "silo", "truck", "job", "where"}
+_TEXTS = {"mix_id", "ticket", "silo", "truck", "job", "where", "issued"}
 _SWITCHES = {"conveyor_on", "rain"}
 
 
@@ -76,6 +76,12 @@ SHAPES: dict[SourceKind, SourceShape] = {
     "weather": SourceShape(
         signals=("air_c", "wind_ms", "cloud_of_sky", "dew_point_c", "rain"),
         needed=("air_c",),
+        key="time",
+        regular=True,
+    ),
+    "forecast": SourceShape(
+        signals=("air_c", "wind_ms", "cloud_of_sky", "dew_point_c", "rain", "issued"),
+        needed=("air_c", "wind_ms", "cloud_of_sky", "dew_point_c"),
         key="time",
         regular=True,
     ),

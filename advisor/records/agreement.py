@@ -49,3 +49,5 @@ def disagreements(records: Records, folder: PlantFolder) -> Iterator[Fault]:
             yield from fault(entry, "tank", f"tank for mix {jobs[run.job].mix}", run.tank, fed)
     for entry in records.all_held("surface_reading"):
         yield from fault(entry, "subject", "job", entry.subject, list(jobs))
+    for entry in records.all_held("weather"):
+        yield from fault(entry, "subject", "job", entry.subject, [*jobs, "plant"])

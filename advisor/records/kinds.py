@@ -11,13 +11,18 @@ from pydantic import Field, PlainSerializer, PlainValidator, ValidationInfo, mod
 from advisor.errors import AdvisorError
 from advisor.settings.certificate import Certificate
 from advisor.settings.fields import (
+    AirTemperature,
     BaseTemperature,
     BinderTankTemperature,
+    DewPoint,
+    Fraction,
+    Length,
     Mass,
     MassRate,
     Moisture,
     Name,
     Sentence,
+    Speed,
     Strict,
     Volume,
     refusal,
@@ -113,6 +118,36 @@ class SurfaceReading(Strict):
     """state of the surface"""
 
 
+class WeatherSeen(Strict):
+    """Weather as somebody read it; its subject is the job it was read at, or 'plant'."""
+
+    air: AirTemperature
+    """temperature of the air, in the shade"""
+    wind: Speed
+    """wind speed"""
+    wind_height: Length
+    """height above the ground at which the wind was taken: 10 m for a mast, 1.5 m by hand"""
+    cloud: Fraction
+    """share of the sky under cloud"""
+    dew_point: DewPoint | None = None
+    humidity: Fraction | None = None
+    """relative humidity, in place of the dew point"""
+    rain: bool
+    """whether rain or snow falls"""
+
+    @model_validator(mode="after")
+    def _one(self) -> WeatherSeen:
+        if (self.dew_point is None) == (self.humidity is None):
+            raise refusal("one-of", "Air has either 'dew_point' or 'humidity'.", "Give one.")
+        if self.dew_point is not None and self.dew_point > self.air:
+            raise refusal(
+                "dew-above-air", "A dew point above the air temperature.", "Are they swapped?"
+            )
+        if self.humidity is not None and self.humidity < 0.01:
+            raise refusal("not-believable", "Air is never that dry.", "Write it as 65 %.")
+        return self
+
+
 class Note(Strict):
     """A remark; its subject is what it is about."""
 
@@ -127,5 +162,6 @@ KINDS: dict[str, type[Strict]] = {
     "moisture": Moist,
     "job_run": JobRun,
     "surface_reading": SurfaceReading,
+    "weather": WeatherSeen,
     "note": Note,
 }

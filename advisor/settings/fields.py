@@ -143,6 +143,8 @@ MassPerArea = Annotated[Written, OfKind("mass_per_area", 0.0, 1e4)]
 # Quantities the glossary names, with its believable range.
 BinderTankTemperature = Annotated[Written, glossary_kind("binder_tank_c")]
 MixTemperature = Annotated[Written, glossary_kind("load_out_c")]
+AirTemperature = Annotated[Written, glossary_kind("air_c")]
+DewPoint = Annotated[Written, glossary_kind("dew_point_c")]
 BaseTemperature = Annotated[Written, glossary_kind("base_c")]
 StackTemperature = Annotated[Written, glossary_kind("stack_c")]
 RollingEnd = Annotated[Written, glossary_kind("rolling_end_c")]

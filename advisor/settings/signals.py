@@ -7,6 +7,7 @@ from typing import Annotated, Literal
 from pydantic import Field, model_validator
 
 from advisor.settings.fields import Name, Strict, refusal
+from advisor.settings.plant import Terrain
 from advisor.units import kinds, units_of
 
 _UNITS = {unit for kind in kinds() for unit in units_of(kind)}
@@ -46,7 +47,7 @@ class Column(Strict):
 class LogSource(Strict):
     """One kind of export."""
 
-    kind: Literal["plant_log", "tickets", "arrivals", "weather"]
+    kind: Literal["plant_log", "tickets", "arrivals", "weather", "forecast"]
     """what it holds"""
     files: Name
     """files it is found in, relative to the plant folder; * stands for anything"""
@@ -61,11 +62,23 @@ class LogSource(Strict):
     """columns by their heading"""
 
 
+class AirportReports(Strict):
+    """Reports of an airport near by, as text (METAR)."""
+
+    files: Name
+    """files they are found in, relative to the plant folder; * stands for anything"""
+    station: Annotated[str, Field(pattern=r"^[A-Z][A-Z0-9]{3}$")]
+    """four letters of the airport; reports of others are set aside"""
+    terrain: Terrain
+    """what surrounds its wind gauge; an airport is mostly open"""
+
+
 class Signals(Strict):
     """signals.yaml"""
 
     sources: Annotated[tuple[LogSource, ...], Field(strict=False, min_length=1)]
     """the exports the plant has"""
+    metar: AirportReports | None = None
 
     def of_kind(self, kind: str) -> tuple[LogSource, ...]:
         """The exports that hold ``kind``."""

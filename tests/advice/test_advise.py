@@ -92,14 +92,18 @@ def test_a_longer_haul_asks_for_more_at_load_out(demo):
 
 
 def test_missing_weather_is_asked_for_not_assumed(demo):
-    advice = advise(gather_situation(replace(demo, weather=None), SHOWN_AT))
+    advice = advise(
+        gather_situation(replace(demo, weather=None, metar=None, forecast=None), SHOWN_AT)
+    )
     assert advice.setpoints == ()
     assert any("weather is not known" in sentence for sentence in advice.missing)
 
 
 def test_weather_too_old_counts_as_missing(demo):
     late = demo.weather[demo.weather["time"] < SHOWN_AT - timedelta(hours=3)]
-    advice = advise(gather_situation(replace(demo, weather=late), SHOWN_AT))
+    advice = advise(
+        gather_situation(replace(demo, weather=late, metar=None, forecast=None), SHOWN_AT)
+    )
     assert advice.missing
 
 
