@@ -234,7 +234,8 @@ def _heat_to_water(
         gone = water * dried
         evaporation = evaporation + gone * (formed - fed)
         superheat = superheat + gone * (steam_enthalpy_j_kg(leaves_c) - formed)
-        residual = residual + (water - gone) * (water_enthalpy_j_kg(mix_c) - fed)
+        stays_c = np.where(water > gone, mix_c, 0.0)  # as above, where no water stays
+        residual = residual + (water - gone) * (water_enthalpy_j_kg(stays_c) - fed)
         steam_kg = steam_kg + gone
         stack_kg = stack_kg + gone * to_stack
     return evaporation, superheat, residual, steam_kg, stack_kg
