@@ -20,7 +20,7 @@ def files(folder: Path = ROOT) -> Iterator[Path]:
             hidden = path.name.startswith(".") and path.name != ".ci"
             if not hidden and path.name not in MADE and path.suffix != ".egg-info":
                 yield from files(path)
-        elif path.suffix in TEXT:
+        elif path.suffix in TEXT and path.name != ".git":
             yield path
 
 
