@@ -91,7 +91,8 @@ def _advice(situation: Situation, path: PathDraws, draws: Draws, brief: bool) ->
         setpoints=setpoints,
         reasons=(*reasons_of(situation, found), *tank_cautions),
         cautions=cautions_of(situation, setpoints),
-        passed_over=tuple(
+        passed_over=base.passed_over
+        + tuple(
             f"{one.name} ({one.as_written or round(one.value_c)}): the contract has its own figure"
             for one in limits.silenced
         )
@@ -178,6 +179,7 @@ def _bare(situation: Situation) -> Advice:
         reasons=(),
         inputs=situation.inputs,
         cautions=(),
+        passed_over=tuple(f"not read: {fault}" for fault in situation.facts.unread),
         confidence=float(situation.facts.folder.plant.confidence),
         provisional=bool(binder and binder.provisional),
         version=advisor.__version__,

@@ -10,6 +10,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 from numpy.typing import NDArray
 
+from advisor.errors import Fault
 from advisor.records import Entry, Records
 from advisor.settings.folder import PlantFolder
 from advisor.settings.tables import load_table
@@ -66,7 +67,8 @@ class PlantFacts:
 
     ``known_at`` limits records and weather to what was known by then; None means everything.
     ``weather``, ``metar``, ``forecast`` and ``log`` are frames as the logs room returns them, the
-    log with its marks; None where the plant has none. ``units`` are those of the sentences.
+    log with its marks; None where the plant has none. ``unread`` are the exports that could not be
+    read and why. ``units`` are those of the sentences.
     """
 
     folder: PlantFolder
@@ -77,6 +79,7 @@ class PlantFacts:
     units: UnitSystem = "si"
     metar: pd.DataFrame | None = None
     forecast: pd.DataFrame | None = None
+    unread: tuple[Fault, ...] = ()
 
     def held(self, kind: str, subject: str, at: datetime) -> Entry | None:
         """The fact of ``kind`` about ``subject`` in force ``at``, as known."""

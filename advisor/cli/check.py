@@ -19,27 +19,32 @@ if TYPE_CHECKING:
 def check(plant: Path, as_json: bool) -> None:
     """Read all of PLANT and tell everything that is wrong in it, with file and line.
 
-    Settings, the columns of the exports, and the dated facts; what does not agree between them
-    too. Ends with 2 where something is wrong.
+    Settings, the exports and their columns, and the dated facts; what does not agree between
+    them too. Ends with 2 where something is wrong.
 
     \b
     Example:
       advisor check demo_plant
     """
+    from advisor.advice.open_plant import open_plant
     from advisor.cli.output import print_json, print_table
     from advisor.errors import AdvisorError, FaultyInput
+    from advisor.logs import read_kind
     from advisor.logs.mapping import check_mapping
-    from advisor.records import disagreements, open_records
-    from advisor.settings import read_plant
+    from advisor.records import disagreements
 
-    folder = read_plant(plant)
+    facts = open_plant(plant, latest_only=True)
+    folder = facts.folder
     faults: list[Fault] = []
     for source in folder.signals.sources:
         try:
             check_mapping(source)
         except AdvisorError as error:
             faults.extend(error.faults)
-    with open_records(folder) as records:
+    if not faults:  # else each file would tell the same once more
+        loads = [*read_kind(folder, "tickets")[1], *read_kind(folder, "arrivals")[1]]
+        faults += [*facts.unread, *(one.refused for one in loads if one.refused)]
+    with facts.records as records:
         faults.extend(disagreements(records, folder))
         entries = records.count()
     if faults:

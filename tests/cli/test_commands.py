@@ -189,6 +189,36 @@ def test_check_looks_at_columns_and_records_too(run, own_demo):
     assert "J22" in err and "Did you mean 'J02'" in err
 
 
+def test_an_export_that_cannot_be_read_is_told_by_check_and_by_the_advice(run, own_demo):
+    path = own_demo / "logs" / "plant_2026-10-23.csv"
+    path.write_text(path.read_text("cp1252").replace("Mix temp", "Mx temp", 1), "cp1252")
+    code, _, err = run("check", own_demo)
+    assert code == 2 and "plant_2026-10-23.csv" in err and "Mix temp" in err and "Mx temp" in err
+    code, out, _ = run("setpoints", own_demo, "--at", FRIDAY)
+    assert code == 0
+    assert "not read: plant_2026-10-23.csv" in out
+    # without the log of the day the time in the silo is assumed, and says so
+    assert "time in silo" in out.split("Inputs:")[0]
+
+
+def test_without_weather_there_is_no_advice_and_it_says_what_is_missing(run, own_demo):
+    for file in (own_demo / "series").iterdir():
+        file.unlink()
+    code, out, _ = run("setpoints", own_demo, "--at", FRIDAY)
+    assert code == 0
+    assert "No advice" in out and "weather is not known" in out
+    assert "°C  " not in out
+
+
+def test_without_a_log_setpoints_stand_and_a_review_is_refused(run, own_demo):
+    for file in (own_demo / "logs").glob("plant_*.csv"):
+        file.unlink()
+    code, out, _ = run("setpoints", own_demo, "--at", FRIDAY)
+    assert code == 0 and "Discharge" in out and "time in silo" in out
+    code, out, err = run("review", own_demo)
+    assert code == 1 and out == "" and "no export of the plant log" in err
+
+
 def test_a_folder_that_is_none_is_refused_by_every_command(run, tmp_path):
     for name in ("setpoints", "review", "check"):
         code, out, err = run(name, tmp_path / "nowhere")
