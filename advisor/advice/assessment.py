@@ -6,6 +6,7 @@ from collections.abc import Iterable
 from dataclasses import dataclass, replace
 
 from advisor.binder import (
+    HARDENING_CODES,
     Check,
     Doubt,
     FlowSweep,
@@ -17,6 +18,7 @@ from advisor.binder import (
     ViscosityCurve,
     ViscosityTarget,
     Window,
+    aged_viscosity_pas,
     check_grade,
     cross_checks,
     crossover_frequency_rad_s,
@@ -109,7 +111,9 @@ def assess(certificate: Certificate, target: str = "mixing") -> Assessment:
     if flash is not None and hottest is not None:
         margin = flash - float(hottest.high_c)
     made_at = float(hottest.target_c) if hottest is not None else None
-    ageing = () if made_at is None else tuple(mixing_hardening(made_at, one) for one in HOTTER_K)
+    ageing = [] if curve is None else [_usual_hardening(curve)]
+    if made_at is not None:
+        ageing += [mixing_hardening(made_at, one) for one in HOTTER_K]
     return Assessment(
         certificate,
         grade,
@@ -120,16 +124,32 @@ def assess(certificate: Certificate, target: str = "mixing") -> Assessment:
         None if curve is None else pumping_temperature_c(curve),
         tank,
         margin,
-        ageing,
+        tuple(ageing),
         _checks(certificate, grade, sheet),
         _doubts(certificate),
         (*_cautions(certificate, grade, sheet, margin), *crossed),
     )
 
 
+def _usual_hardening(curve: ViscosityCurve) -> Hardening:
+    """What mixing and laying do to this binder, by its resistance to hardening."""
+    before = float(curve.viscosity_pas(135.0))
+    low, middle, high = (
+        float(aged_viscosity_pas(before, code)) / before
+        for code in (min(HARDENING_CODES.values()), 0, max(HARDENING_CODES.values()))
+    )
+    return Hardening(
+        low,
+        middle,
+        high,
+        f"Mixing and laying make it {low:.1f} to {high:.1f} times as viscous at 135 C, "
+        f"{middle:.1f} times with average resistance to hardening (Mirza and Witczak 1995, from memory).",
+    )
+
+
 def _of_compaction(target: str) -> ViscosityTarget:
     kinematic = viscosity_target(target).basis == "kinematic"
-    return viscosity_target("compaction, kinematic" if kinematic else "compaction")
+    return viscosity_target("kinematic compaction" if kinematic else "compaction")
 
 
 def _governed(

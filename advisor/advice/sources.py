@@ -3,18 +3,21 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from advisor.binder import (
     DriftChart,
     SourceChange,
     ViscosityCurve,
+    Window,
     compare_curves,
+    curve_of_sheet,
     drift_chart,
+    rap_blend_curve,
 )
 from advisor.errors import MissingInput
 from advisor.settings.binder_tables import viscosity_target
-from advisor.settings.binders import certificate_sheet
+from advisor.settings.binders import certificate_readings, certificate_sheet, target_window
 from advisor.settings.certificate import Certificate
 
 
@@ -38,6 +41,37 @@ def compare(older: Certificate, newer: Certificate) -> SourceChange:
         curves.append(sheet.curve)
     asked = [(name, viscosity_target(name).target) for name in ("mixing", "compaction", "pumping")]
     return compare_curves(curves[0], curves[1], asked, same_laboratory=same)
+
+
+def with_rap(
+    virgin: Certificate, rap: Certificate, share_of_binder: float, low: float, high: float
+) -> tuple[Window, Window]:
+    """Mixing and compaction window of the ``virgin`` binder with that of RAP or RAS.
+
+    ``share_of_binder`` is the share of the total binder the ``rap`` sheet describes, ``low`` to
+    ``high`` how much of it blends. Raises MissingInput where one of the two gives no curve.
+    """
+    fresh = certificate_sheet(virgin).curve
+    recovered = curve_of_sheet(
+        [
+            replace(one, sample=replace(one.sample, condition="original"))
+            for one in certificate_readings(rap)
+        ],
+        None,
+    ).curve
+    if fresh is None or recovered is None:
+        lot = virgin.lot if fresh is None else rap.lot
+        raise MissingInput.of(
+            "no-curve",
+            f"Lot {lot} gives no curve to blend.",
+            "Measure its viscosity at two temperatures.",
+            value=lot,
+        )
+    blend = rap_blend_curve(fresh, recovered, share_of_binder, low, high)
+    mixing, compaction = (
+        target_window(blend, viscosity_target(name)) for name in ("mixing", "compaction")
+    )
+    return mixing, compaction
 
 
 @dataclass(frozen=True, eq=False)

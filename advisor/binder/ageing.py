@@ -27,10 +27,10 @@ HARDENING_CODES: dict[Resistance, int] = {
 # Activation energy of oxidation, J/mol: 64 to 109 in 14 asphalts (Liu et al. 1996, AIChE J. 42(4),
 # looked up; measured near 60 to 100 C). The middle value is common practice, no source.
 OXIDATION_LOW_J_MOL, OXIDATION_MIDDLE_J_MOL, OXIDATION_HIGH_J_MOL = 64e3, 85e3, 109e3
-# A hot mix film hardens by about this factor at 135 C on its way through plant and laying when
-# mixed at 163 C: derived from the hardening codes (1.6 to 2.4 at 0.4 Pa.s).
-_MIXING_REFERENCE_C, _MIXING_FACTOR = 163.0, 1.85
-# The softening point rises 1 K for every 5.5 K of mixing temperature (handbook rule, from memory);
+# A hot mix film hardens by about this factor at 135 C on its way through plant and laying: derived
+# from the hardening codes (1.6 to 2.4 at 0.4 Pa.s).
+_MIXING_FACTOR = 1.85
+# The softening point rises 1 K for every 5.5 K of mixing temperature (rule of thumb, from memory);
 # 1 K along the curve is 5.6 % of viscosity at 135 C (derived from a PG 64-22 line).
 _SOFTENING_PER_K, _LN_VISCOSITY_PER_K = 1.0 / 5.5, 0.056
 # Storage: days in which a still tank of 0.15 m2 surface per tonne at 150 C hardens by less than
@@ -209,9 +209,10 @@ class Hardening:
 def mixing_hardening(mixing_c: float, hotter_k: float) -> Hardening:
     """How much more the binder hardens when mixed hotter, as a factor on its viscosity at 135 C.
 
-    The least effect believed is a handbook rule on the softening point; the greatest takes all
-    hardening for oxidation with the highest activation energy. The middle lies between the rule
-    and oxidation with the middle energy.
+    The hardening that is usual in mixing and laying is taken to happen at the temperature of now.
+    The least effect of more believed is a rule of thumb on the softening point; the greatest takes
+    all hardening for oxidation with the highest activation energy. The middle lies between the
+    rule and oxidation with the middle energy.
 
     Args:
         mixing_c: temperature the mix is made at now [C].
@@ -223,8 +224,8 @@ def mixing_hardening(mixing_c: float, hotter_k: float) -> Hardening:
     """
 
     def by_oxidation(energy: float) -> float:
-        usual = np.log(_MIXING_FACTOR) * oxidation_ratio(_MIXING_REFERENCE_C, mixing_c, energy)
-        return float(usual * (oxidation_ratio(mixing_c, mixing_c + hotter_k, energy) - 1.0))
+        more = oxidation_ratio(mixing_c, mixing_c + hotter_k, energy) - 1.0
+        return float(np.log(_MIXING_FACTOR) * more)
 
     by_rule = _LN_VISCOSITY_PER_K * _SOFTENING_PER_K * hotter_k
     middle = 0.5 * (by_rule + by_oxidation(OXIDATION_MIDDLE_J_MOL))

@@ -227,4 +227,7 @@ def _odd_factor(bulb: Bulb) -> str:
 
 
 def _written(bulbs: Sequence[Bulb], unit: str) -> str:
-    return "; ".join(f"{bulb.name}: {bulb.factor:g} {unit} x {bulb.flow_s:g} s" for bulb in bulbs)
+    return "; ".join(
+        f"{bulb.name}: {bulb.factor:g} {unit} x {bulb.flow_s:g} s".removeprefix(": ")
+        for bulb in bulbs
+    )

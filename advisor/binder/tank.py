@@ -12,7 +12,7 @@ from advisor.errors import OutsideValidity
 FLASH_MARGIN_K = 30.0
 # Road bitumen is stored at or below this: Eurobitume, as quoted in guidance seen (looked up).
 ROAD_BITUMEN_MOST_C = 200.0
-# Viscosity up to which binder pumps easily, Pa.s: The Shell Bitumen Handbook (from memory). A
+# Viscosity up to which binder pumps easily, Pa.s: European practice (from memory). A
 # specification cap of 3 Pa.s at 135 C stands in AASHTO M 320 (looked up).
 PUMPABLE_PAS = 2.0
 
@@ -48,7 +48,7 @@ def pumping_temperature_c(
         curve: viscosity curve of one binder.
         viscosity_pas: highest viscosity the pump takes [Pa.s].
 
-    Source: 2 Pa.s, handbook practice (from memory).
+    Source: 2 Pa.s, European practice (from memory).
     """
     return float(curve.temperature_c(viscosity_pas)), float(curve.temperature_sd_k(viscosity_pas))
 
@@ -101,7 +101,7 @@ def tank_range(
     if curve is not None:
         value, sd = pumping_temperature_c(curve, pumpable_pas)
         words = f"pumpable, {pumpable_pas:g} Pa.s"
-        lows.append(Bound(value, words, "handbook practice", "from memory", sd))
+        lows.append(Bound(value, words, "European practice", "from memory", sd))
     if supplier_low_c is not None:
         lows.append(Bound(supplier_low_c, "supplier's storage range", supplier_source, "entered"))
     if supplier_high_c is not None:

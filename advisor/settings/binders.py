@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from dataclasses import replace
 from functools import lru_cache
 
 from advisor.binder import (
@@ -160,14 +161,28 @@ def supplier_range(certificates: Sequence[Certificate], purpose: str = "mixing")
 
 
 def _reading(certificate: Certificate, one: LabReading) -> Reading | None:
+    found = _judged(certificate, one)
+    if found is None or not isinstance(one, VacuumCapillary | KinematicCapillary | Rotational):
+        return found
+    return replace(found, as_written=_as_written(one))
+
+
+def _as_written(one: VacuumCapillary | KinematicCapillary | Rotational) -> str:
+    """The figures of a test as its sheet writes them."""
+    if isinstance(one, Rotational):
+        values = one.viscosities if one.viscosity is None else (one.viscosity,)
+        return ", ".join(value.text for value in values)
+    if one.factor is not None and one.time is not None:
+        return f"{one.factor.text} x {one.time.text}"
+    return "; ".join(f"{each.name}: {each.factor.text} x {each.time.text}" for each in one.bulbs)
+
+
+def _judged(certificate: Certificate, one: LabReading) -> Reading | None:
     sample = Sample(one.condition, one.laboratory or certificate.laboratory)
     precision = precision_table().find
     if isinstance(one, VacuumCapillary):
-        bulbs = [Bulb(bulb.name, float(bulb.factor), float(bulb.time)) for bulb in one.bulbs]
-        if one.factor is not None and one.time is not None:
-            bulbs = [Bulb("", float(one.factor), float(one.time))]
         return vacuum_capillary_reading(
-            float(one.temperature), bulbs, precision("vacuum capillary"),
+            float(one.temperature), _bulbs(one), precision("vacuum capillary"),
             average=one.average, sample=sample,
         )  # fmt: skip
     if isinstance(one, KinematicCapillary | KinematicValue):
@@ -227,9 +242,12 @@ def _kinematic(
             at, float(one.viscosity), density, precision, as_written=one.viscosity.text,
             sample=sample,
         )  # fmt: skip
-    bulbs = [Bulb(bulb.name, float(bulb.factor), float(bulb.time)) for bulb in one.bulbs]
-    if one.factor is not None and one.time is not None:
-        bulbs = [Bulb("", float(one.factor), float(one.time))]
     return kinematic_capillary_reading(
-        at, bulbs, density, precision, average=one.average, sample=sample
+        at, _bulbs(one), density, precision, average=one.average, sample=sample
     )
+
+
+def _bulbs(one: VacuumCapillary | KinematicCapillary) -> list[Bulb]:
+    if one.factor is not None and one.time is not None:
+        return [Bulb("", float(one.factor), float(one.time))]
+    return [Bulb(each.name, float(each.factor), float(each.time)) for each in one.bulbs]

@@ -133,8 +133,8 @@ def test_any_binder_is_wider_than_a_grade() -> None:
 
 def test_targets_and_modifiers_carry_their_sources() -> None:
     assert viscosity_target("mixing").target == 0.17
-    assert viscosity_target("mixing, kinematic").target == pytest.approx(170e-6)
-    assert target_shear_rate_per_s("mixing, high shear 500 1/s") == 500.0
+    assert viscosity_target("kinematic mixing").target == pytest.approx(170e-6)
+    assert target_shear_rate_per_s("mixing at 500 1/s") == 500.0
     for target in viscosity_targets():
         assert target.source
         assert target.how_known
