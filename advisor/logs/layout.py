@@ -68,13 +68,8 @@ def find_layout(
     Raises FaultyInput naming every column that is missing or there twice.
     """
     lines = _first_lines(text.raw)
-    best: tuple[int, int, str] | None = None
-    for number, line in enumerate(lines):
-        for mark in (delimiter,) if delimiter else DELIMITERS:
-            cells = [plain_name(cell) for cell in split_line(line, mark)]
-            hits = sum(bool(_places(name, cells)) for name in (*needed, *optional))
-            if hits and len(cells) > 1 and (best is None or hits > best[0]):
-                best = (hits, number, mark)
+    marks = (delimiter,) if delimiter else DELIMITERS
+    best = _best_header(lines, marks, {plain_name(name) for name in (*needed, *optional)})
     if best is None:
         raise FaultyInput.of(
             "header-missing",
@@ -83,7 +78,7 @@ def find_layout(
             "Check that this is the right file, or name its columns in signals.yaml.",
             file=file,
         )
-    _, header_at, mark = best
+    header_at, mark = best
     header = split_line(lines[header_at], mark)
     columns = _columns(header, needed, optional, file, header_at + 1)
     first_row, unit_cells = _after_header(lines, header_at, mark)
@@ -101,6 +96,23 @@ def find_layout(
         start=_byte_of_line(text.raw, first_row),
         header_lines=first_row,
     )
+
+
+def _best_header(
+    lines: list[str], marks: tuple[str, ...], wanted: set[str]
+) -> tuple[int, str] | None:
+    """The first line, and its delimiter, that names most of ``wanted``; None where none does."""
+    best: tuple[int, str] | None = None
+    most = 0
+    for number, line in enumerate(lines):
+        for mark in marks:
+            cells = {plain_name(cell) for cell in split_line(line, mark)}
+            hits = len(wanted & (cells | {name_and_unit(cell)[0] for cell in cells}))
+            if hits > most and len(cells) > 1:
+                best, most = (number, mark), hits
+        if most == len(wanted):
+            break
+    return best
 
 
 def split_line(line: str, delimiter: str) -> list[str]:
