@@ -1,10 +1,10 @@
 """Shifts, also those that run past midnight."""
 
 import pytest
-from demo_schedule import ZONE, moment
 
 from advisor.settings import read_plant
 from advisor.settings.shifts import shift_at, shift_end
+from demo_schedule import ZONE, moment
 
 
 @pytest.fixture(scope="module")
