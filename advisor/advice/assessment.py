@@ -143,7 +143,8 @@ def _usual_hardening(curve: ViscosityCurve) -> Hardening:
         middle,
         high,
         f"Mixing and laying make it {low:.1f} to {high:.1f} times as viscous at 135 C, "
-        f"{middle:.1f} times with average resistance to hardening (Mirza and Witczak 1995, from memory).",
+        f"{middle:.1f} times with average resistance to hardening (Mirza and Witczak 1995, from "
+        "memory).",
     )
 
 
