@@ -19,6 +19,7 @@ from advisor.units import UnitSystem, shown, shown_number, shown_unit
 _RANGE_C = (90.0, 200.0)
 _RANGE_PAS = (0.05, 20.0)
 _TICKS_PAS = (0.03, 0.05, 0.1, 0.2, 0.5, 1.0, 2.0, 5.0, 20.0, 100.0, 1e3, 1e4, 1e5, 1e6)
+_NAMED_AT = 0.72  # where along a line its name stands
 _SCORE = 1.959964  # two-sided 95 %
 
 
@@ -101,7 +102,7 @@ def _windows(one: Assessment) -> Iterator[tuple[str, Window]]:
 
 def _higher(one: ViscosityCurve, other: ViscosityCurve, span_c: tuple[float, float]) -> bool:
     """Whether ``one`` runs above ``other`` where the names of the lines stand."""
-    at = span_c[0] + 0.88 * (span_c[1] - span_c[0])
+    at = span_c[0] + _NAMED_AT * (span_c[1] - span_c[0])
     return bool(one.viscosity_pas(at) > other.viscosity_pas(at))
 
 
@@ -161,7 +162,7 @@ def _shade(
         x1=float(log_rankine(high)),
         fillcolor=ink.window,
         opacity=0.75,
-        line_width=0,
+        line={"color": ink.sheet, "width": 2},  # keeps windows that touch apart
         layer="below",
     )
     x = float(log_rankine(target))
@@ -226,7 +227,7 @@ def _line(
     inside = np.flatnonzero(known)
     if not inside.size:
         return
-    where = int(inside[int(0.88 * (inside.size - 1))])
+    where = int(inside[int(_NAMED_AT * (inside.size - 1))])
     figure.add_annotation(
         x=float(log_rankine(at[where])),
         y=float(loglog_viscosity(eta[where])),

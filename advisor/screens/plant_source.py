@@ -28,6 +28,7 @@ from advisor.records.opening import STORE
 from advisor.review.plant import PlantReview, log_span, review_plant
 from advisor.review.result import Excursion, Review
 from advisor.screens.source import JobChoice, LaterHour
+from advisor.settings.certificate import Certificate
 from advisor.settings.folder import PlantFolder
 from advisor.settings.shifts import shift_at, shift_end
 from advisor.units import UnitSystem, shown
@@ -181,6 +182,11 @@ class PlantSource:
     def review(self, start: datetime, end: datetime) -> Review:
         """The period against the advice then in force; quick when asked again."""
         return self._reviewed(start, end).review
+
+    def certificates(self, at: datetime) -> Sequence[Certificate]:
+        """The binder certificates recorded by ``at``, the newest first."""
+        held = _as_known(self._facts, at).all_held("certificate", end=at)
+        return [entry.fact for entry in reversed(held)]
 
     def tickets(self, start: datetime, end: datetime) -> Sequence[TicketPoint]:
         """The truck loads from ``start`` to ``end``."""

@@ -64,6 +64,25 @@ def review_query(search: str | None) -> ReviewQuery:
     return ReviewQuery(first, last, tuple(faults))
 
 
+@dataclass(frozen=True)
+class BinderQuery:
+    """What the binder page's address asks for, by lot."""
+
+    lot: str | None = None
+    against: str | None = None
+    faults: tuple[str, ...] = ()
+
+
+def binder_query(search: str | None, lots: tuple[str, ...]) -> BinderQuery:
+    """The lots of an address such as '/binder?lot=A-2641&against=B-4410'."""
+    given, faults = _pairs(search, ("lot", "against"))
+    for name, lot in list(given.items()):
+        if lot not in lots:
+            faults.append(f"No certificate of lot '{lot}' is recorded{_nearest(lot, lots)}.")
+            del given[name]
+    return BinderQuery(given.get("lot"), given.get("against"), tuple(faults))
+
+
 def days_to_times(first: date, last: date, zone: ZoneInfo) -> tuple[datetime, datetime]:
     """Start of the first and end of the last day in the plant's time zone, in UTC."""
     start = datetime(first.year, first.month, first.day, tzinfo=zone)

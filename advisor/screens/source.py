@@ -11,6 +11,7 @@ from zoneinfo import ZoneInfo
 from advisor.advice.result import Advice
 from advisor.figures.drawn import Reading, TicketPoint, Trace, WindowSpan
 from advisor.review.result import Excursion, Review
+from advisor.settings.certificate import Certificate
 from advisor.units import UnitSystem
 
 # Plant logs come once a minute; after five missed ones the reading is history, not the present.
@@ -95,6 +96,9 @@ class Source(Protocol):
 
     def review(self, start: datetime, end: datetime) -> Review:
         """The period against the advice then in force; quick when asked again."""
+
+    def certificates(self, at: datetime) -> Sequence[Certificate]:
+        """The binder certificates recorded by ``at``, the newest first."""
 
     def tickets(self, start: datetime, end: datetime) -> Sequence[TicketPoint]:
         """The truck loads from ``start`` to ``end``."""

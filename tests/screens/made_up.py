@@ -39,6 +39,7 @@ from advisor.review.result import (
     Waste,
 )
 from advisor.screens.source import JobChoice, LaterHour
+from advisor.settings.certificate import Certificate
 
 ZONE = ZoneInfo("Europe/London")
 NOW = datetime(2026, 10, 23, 9, 10, tzinfo=UTC)
@@ -129,7 +130,7 @@ def advice(at: datetime = NOW, job: str = "J-3") -> Advice:
             PathPoint("first pass", 75, 138, 143, 152),
         ),
         rolling=Rolling(13, 15.5, 18, 14, 80, "mid-depth at 80 °C"),
-        heat=Heat(88, 79, 16.1, 52, None, 0.041, 4.9, "GBP"),
+        heat=Heat(88, 79, 16.1, 0.041, 4.9, "GBP"),
         contributions=(
             Contribution("wind at the site", 1.6),
             Contribution("haul time", 1.2),
@@ -255,6 +256,9 @@ class MadeUpPlant:
 
     def review(self, start: datetime, end: datetime) -> Review:
         return review(start, end)
+
+    def certificates(self, at: datetime) -> Sequence[Certificate]:
+        return ()
 
     def tickets(self, start: datetime, end: datetime) -> Sequence[TicketPoint]:
         count = max(int((end - start) / timedelta(minutes=12)), 0)

@@ -1,0 +1,179 @@
+"""The binder page: what does this certificate allow, how sure, and what moves with a new source?"""
+
+from __future__ import annotations
+
+from typing import Any
+
+from dash import Dash, Input, Output, State, dcc, html
+
+from advisor.advice.assessment import Assessment, assess
+from advisor.advice.sources import compare
+from advisor.binder import SourceChange
+from advisor.errors import AdvisorError
+from advisor.figures.base import STILL, blank
+from advisor.figures.ink import Ink, ink_of
+from advisor.figures.viscosity import viscosity_chart, viscosity_words
+from advisor.screens import binder_parts as parts
+from advisor.screens.ids import id_of
+from advisor.screens.query import binder_query
+from advisor.screens.shift_parts import error_block
+from advisor.screens.source import Source
+from advisor.settings.certificate import Certificate
+from advisor.units import UnitSystem
+
+PAGE = "binder"
+TITLE = "Binder"
+PATH = "/binder"
+CHART_PX = 420
+# What the page is made of, in the columns it stands in.
+_LEFT = (
+    ("readings", "Readings"),
+    ("checks", "Checks"),
+    ("hardening", "Hardening"),
+    ("cautions", "Cautions"),
+)
+_RIGHT = (("moves", "What moves"), ("windows", "Windows"), ("tank", "Tank"))
+
+
+def layout(source: Source, search: str | None) -> Any:
+    """The page for an address such as '/binder?lot=A-2641&against=B-4410'."""
+    sheets = source.certificates(source.now())
+    asked = binder_query(search, tuple(one.lot for one in sheets))
+    options = [{"label": f"{one.lot}, {one.grade}", "value": one.lot} for one in sheets]
+    lot = asked.lot or (sheets[0].lot if sheets else "")
+    return html.Div(
+        [
+            html.Div([html.P(one, className="banner") for one in asked.faults], className="alerts"),
+            html.Div(
+                [
+                    html.Section(
+                        [
+                            html.Div(
+                                [
+                                    html.Div(id=id_of(PAGE, "heading"), className="heading"),
+                                    html.Div(
+                                        [
+                                            _choice("Lot", "lot", options, lot),
+                                            _choice(
+                                                "against",
+                                                "against",
+                                                [{"label": "nothing", "value": ""}, *options],
+                                                asked.against or "",
+                                            ),
+                                        ],
+                                        className="pair",
+                                    ),
+                                ],
+                                className="top",
+                            ),
+                            dcc.Graph(
+                                id=id_of(PAGE, "chart"),
+                                figure=blank(),
+                                config=STILL,
+                                className="graph",
+                                style={"height": f"{CHART_PX}px"},
+                            ),
+                            html.P(id=id_of(PAGE, "chart-words"), className="heard-only"),
+                        ],
+                        className="sheet chart",
+                    ),
+                    *(_section(part, title) for part, title in _LEFT),
+                ],
+                className="column",
+            ),
+            html.Div(
+                [_section(part, title) for part, title in _RIGHT],
+                className="column aside",
+            ),
+        ],
+        className="page binder",
+    )
+
+
+def _choice(label: str, part: str, options: list[dict[str, str]], value: str) -> Any:
+    return html.Div(
+        [
+            html.Label(label, htmlFor=id_of(PAGE, part)),
+            dcc.Dropdown(
+                id=id_of(PAGE, part),
+                options=options,
+                value=value,
+                clearable=False,
+                searchable=False,
+            ),
+        ],
+        className="choose",
+    )
+
+
+def _section(part: str, title: str) -> Any:
+    return html.Section([html.H2(title), html.Div(id=id_of(PAGE, part))], className=f"sheet {part}")
+
+
+def register(app: Dash, source: Source) -> None:
+    """Give the page's callback to ``app``."""
+
+    @app.callback(
+        output={
+            name: Output(id_of(PAGE, name), "figure" if name == "chart" else "children")
+            for name in ("heading", "chart", "chart-words", *dict((*_LEFT, *_RIGHT)))
+        },
+        inputs={
+            "lot": Input(id_of(PAGE, "lot"), "value"),
+            "against": Input(id_of(PAGE, "against"), "value"),
+            "units": Input("units", "value"),
+            "scheme": Input("scheme", "data"),
+            "_page": State("address", "pathname"),
+        },
+    )
+    def show(
+        lot: str | None, against: str | None, units: UnitSystem, scheme: str, _page: str
+    ) -> dict[str, Any]:
+        sheets = {one.lot: one for one in source.certificates(source.now())}
+        if lot not in sheets:
+            return _empty(parts.nothing())
+        try:
+            return _shown(sheets[lot], sheets.get(against or ""), units, ink_of(scheme))
+        except AdvisorError as error:
+            return _empty(error_block(error, f"Lot {lot} cannot be judged"))
+
+
+def _shown(
+    sheet: Certificate, older: Certificate | None, units: UnitSystem, ink: Ink
+) -> dict[str, Any]:
+    """Every part of the page for one certificate and the one it is compared with."""
+    one = assess(sheet)
+    before = None if older is None or older.lot == sheet.lot else assess(older)
+    change = _change(before, one)
+    return {
+        "heading": parts.heading(one),
+        "chart": viscosity_chart(one, before, ink, units),
+        "chart-words": viscosity_words(one, before, units),
+        "readings": parts.reading_table(one, units),
+        "checks": parts.check_list(one),
+        "windows": parts.window_table(one, units),
+        "moves": parts.moves(before, change, units),
+        "tank": parts.tank_table(one, units),
+        "hardening": parts.sentences([hardening.sentence for hardening in one.ageing]),
+        "cautions": parts.sentences(one.cautions),
+    }
+
+
+def _change(before: Assessment | None, one: Assessment) -> SourceChange | AdvisorError | None:
+    if before is None:
+        return None
+    try:
+        return compare(before.certificate, one.certificate)
+    except AdvisorError as error:
+        return error
+
+
+def _empty(instead: Any) -> dict[str, Any]:
+    """The page where there is no certificate to show, or it cannot be judged."""
+    names = dict((*_LEFT, *_RIGHT))
+    return {
+        "heading": instead,
+        "chart": blank(),
+        "chart-words": "No chart.",
+        **dict.fromkeys(names, html.P("Not known without a certificate.", className="quiet")),
+    }
