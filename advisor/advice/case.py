@@ -25,7 +25,7 @@ from advisor.heat import (
 )
 from advisor.settings.tables import Row, load_table
 
-_CONE_OF_DIAMETER = 0.6  # height of a silo cone over the diameter; common practice, no source
+CONE_OF_DIAMETER = 0.6  # height of a silo cone over the diameter; common practice, no source
 _CALM_MS = 0.3  # a calm is never quite still; keeps the log of the wind finite
 _LIGHT_AIR_MS = 1.0  # air moves past a truck that stands
 
@@ -129,7 +129,7 @@ def path_case(situation: Situation) -> PathCase:
         hold_s=situation.hold_s,
         silo_kg=max(situation.silo_kg, 1000.0),
         silo_radius_m=float(silo.diameter) / 2.0 if silo else 1.0,
-        silo_cone_m=_CONE_OF_DIAMETER * float(silo.diameter) if silo else 1.0,
+        silo_cone_m=CONE_OF_DIAMETER * float(silo.diameter) if silo else 1.0,
         silo_wm2k=float(silo.wall_u) if silo else 0.0,
         silo_log_sd=spread("silo wall doubt")["log_sd"],
         rate_kgs=situation.rate_kgs,

@@ -24,14 +24,7 @@ def tank_setpoint(
     temperature of mixing neither cools nor heats it.
     """
     try:
-        allowed = tank_range(
-            None if binder.modified else binder.curve,
-            flash_point_c=binder.flash_c,
-            flash_method=binder.flash_method,
-            supplier_low_c=binder.storage_low_c,
-            supplier_high_c=binder.supplier_most_c[0] if binder.supplier_most_c else None,
-            supplier_source=binder.supplier_most_c[1] if binder.supplier_most_c else "",
-        )
+        allowed = range_of_binder(binder)
     except OutsideValidity as error:
         return None, tuple(Reason("tank", str(fault)) for fault in error.faults)
     own = [limit for limit in elsewhere if limit.point == "binder_tank"]
@@ -55,6 +48,21 @@ def tank_setpoint(
         ),
         remarks,
     )  # fmt: skip
+
+
+def range_of_binder(binder: BinderState) -> TankRange:
+    """The range a tank may be kept in for the sake of ``binder``.
+
+    Raises OutsideValidity where no bound can be told.
+    """
+    return tank_range(
+        None if binder.modified else binder.curve,
+        flash_point_c=binder.flash_c,
+        flash_method=binder.flash_method,
+        supplier_low_c=binder.storage_low_c,
+        supplier_high_c=binder.supplier_most_c[0] if binder.supplier_most_c else None,
+        supplier_source=binder.supplier_most_c[1] if binder.supplier_most_c else "",
+    )
 
 
 def _bounds(allowed: TankRange, side: Side) -> list[Limit]:

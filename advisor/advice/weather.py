@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from advisor.advice.facts import PlantFacts, Weather, seconds_of
+from advisor.errors import MissingInput
 from advisor.settings.tables import load_table
 
 if TYPE_CHECKING:
@@ -135,3 +136,25 @@ def _dew_c(air_c: float, humidity: float) -> float:
     """Dew point [C] from relative humidity [1]: Magnus, 17.62 and 243.12 C (WMO-No. 8, memory)."""
     power = float(np.log(humidity)) + 17.62 * air_c / (243.12 + air_c)
     return 243.12 * power / (17.62 - power)
+
+
+def mean_air_c(facts: PlantFacts, start: datetime, end: datetime) -> float:
+    """Mean air temperature [C] at the plant from ``start`` to ``end``, hour by hour.
+
+    Raises MissingInput where an hour is told by nobody.
+    """
+    hours = max(int((end - start).total_seconds() // 3600), 1)
+    airs = []
+    for hour in range(hours + 1):
+        at = min(start + timedelta(hours=hour), end)
+        told = weather_told(facts, at, "")
+        if not told:
+            local = at.astimezone(facts.folder.zone)
+            raise MissingInput.of(
+                "no-air",
+                f"No forecast tells the air temperature of {local:%a %d %b %H:%M}.",
+                "Bring a forecast file that reaches that far, or give the mean air temperature.",
+                field="air",
+            )
+        airs.append(told[0].air_c)
+    return float(np.mean(airs))

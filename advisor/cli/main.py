@@ -14,6 +14,7 @@ from advisor.errors import AdvisorError, Fault, FaultyInput
 # Name of a command (module and function of advisor.cli) and what it answers.
 COMMANDS = {
     "setpoints": "What to run now: low, target and high at every point, and why.",
+    "ahead": "What comes: a load, a change, a silo overnight, a tank at rest, the day.",
     "review": "Where, when and why the plant ran over or under, and what it cost.",
     "dashboard": "The pages for operator, QC and manager, in a browser.",
     "binder": "From laboratory readings to viscosity, window and doubt.",

@@ -5,7 +5,7 @@ from __future__ import annotations
 import datetime as dt
 import re
 import warnings
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 
 import pandas as pd
@@ -161,7 +161,7 @@ def _row(line: _Line, station: str) -> tuple[tuple[object, ...], bool]:
     return row, clear
 
 
-def _cloud(text: str, layers: list[tuple[str, object, object]]) -> tuple[float, bool]:
+def _cloud(text: str, layers: Sequence[tuple[str, object, object]]) -> tuple[float, bool]:
     """Share of the sky under cloud, and whether it is an instrument's 'clear'."""
     oktas = [_OKTAS[cover] for cover, *_ in layers if cover in _OKTAS]
     if oktas:
