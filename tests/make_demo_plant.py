@@ -161,7 +161,7 @@ def burner(plant: Plant, at: datetime, run: demo.Run | None) -> float:
     if between(at, *demo.HOT_HOUR[:2]):
         wet = moisture(moment(demo.HOT_HOUR[0]) - MINUTE)[1]  # nobody turned it down
     heat_w = run.rate_th / 3.6 * (980.0 * (plant.base_c - air_c(at)) + 2.62e6 * wet * 0.95)
-    return min(1.0, heat_w / 0.86 / 21e6)
+    return min(1.0, heat_w / 0.86 / 24.6e6)
 
 
 def step_stack(plant: Plant, at: datetime, run: demo.Run | None, load: float) -> None:

@@ -8,16 +8,25 @@ from dataclasses import replace
 import numpy as np
 
 import advisor
+from advisor.advice.burner import (
+    aggregate_limit,
+    aggregate_setpoint,
+    burner_of,
+    burner_words,
+    most_rap,
+    rap_words,
+)
 from advisor.advice.case import path_case
 from advisor.advice.fuel import heat_of
 from advisor.advice.limits import CollectedLimits, collect_limits
 from advisor.advice.path import DRAWN, PathDraws, draw_path, rolling_times_s
 from advisor.advice.reasons import cautions_of, expiry, reasons_of, weather_limits
 from advisor.advice.remedies import remedies
-from advisor.advice.result import Advice, Contribution, PathPoint, Reason, Rolling, Setpoint
+from advisor.advice.result import Advice, Burner, Contribution, PathPoint, Reason, Rolling, Setpoint
 from advisor.advice.situation import Situation
 from advisor.advice.solve import Solution, solve
 from advisor.advice.tank import tank_setpoint
+from advisor.errors import AdvisorError
 from advisor.heat.mat import Criterion
 from advisor.sampling import Draws, contributions_sd, quantile
 from advisor.settings.plant import Sensor
@@ -77,6 +86,9 @@ def _advice(situation: Situation, path: PathDraws, draws: Draws, brief: bool) ->
     limits = collect_limits(
         folder, situation.mix, situation.job, binder, path, situation.facts.units
     )
+    hottest = aggregate_limit(situation)
+    if hottest:
+        limits = replace(limits, path=(*limits.path, (hottest, hottest.value_c)))
     scatter = scatter_k(situation, draws)
     found = solve(limits.path, limits.coating, path.legs, scatter, float(folder.plant.confidence))
     base = _frame(situation, limits, found)
@@ -85,7 +97,9 @@ def _advice(situation: Situation, path: PathDraws, draws: Draws, brief: bool) ->
         ways = () if brief else remedies(situation, clash, path.case, draws, CRITERION)
         return replace(base, clash=replace(clash, remedies=ways), setpoints=())
     tank, tank_cautions = tank_setpoint(situation, binder, limits.elsewhere)
-    setpoints = (*((tank,) if tank else ()), *found.setpoints)
+    aggregate = aggregate_setpoint(situation, found.at("discharge"))
+    before = tuple(one for one in (tank, aggregate) if one)
+    setpoints = (*before, *found.setpoints)
     advice = replace(
         base,
         setpoints=setpoints,
@@ -115,6 +129,10 @@ def _in_full(
     shares = contributions_sd(needed, inputs)
     if not shares and found.lows[0].limit.sd_k:
         shares = {"viscosity of the binder": found.lows[0].limit.sd_k}
+    burner, rap = _burner(situation, discharge.target_c)
+    told = (burner_words(situation, burner) if burner else ()) + rap_words(
+        situation, discharge.target_c, rap
+    )
     hold_min, road_min = situation.hold_s[1] / 60.0, situation.job.on_road_s / 60.0
     return replace(
         advice,
@@ -129,12 +147,23 @@ def _in_full(
         ),
         contributions=tuple(Contribution(name, sd) for name, sd in shares.items() if sd >= 0.1),
         heat=heat_of(situation, discharge.target_c),
+        burner=burner,
+        most_rap_of_mix=rap,
+        reasons=(*advice.reasons, *(Reason("burner", sentence) for sentence in told)),
         felt_truck_min=hold_min,
         felt_paver_min=hold_min + road_min,
         arrival_c=float(np.median(arriving)),
         arrival_sd_k=float(np.std(arriving)),
         wait_left_min=_wait_left_min(path, discharge.target_c, delivery.low_c),
     )
+
+
+def _burner(situation: Situation, discharge_c: float) -> tuple[Burner | None, float | None]:
+    """What burner and RAP have to do; nothing where the balance has no answer."""
+    try:
+        return burner_of(situation, discharge_c), most_rap(situation, discharge_c)
+    except AdvisorError:
+        return None, None
 
 
 def _frame(situation: Situation, limits: CollectedLimits, found: Solution) -> Advice:

@@ -88,8 +88,6 @@ def heat_of(situation: Situation, discharge_c: float) -> Heat | None:
         gross_kwh_t=gross * _KG_PER_T / _J_PER_KWH,
         net_kwh_t=float(balance.net_j_kg) * _KG_PER_T / _J_PER_KWH,
         co2_kg_t=float(balance.co2_kg_kg) * _KG_PER_T,
-        stack_dew_point_c=float(balance.dew_point_c),
-        hot_aggregate_c=None,
         moisture_of_dry_mass=situation.moisture,
         money_t=gross * _KG_PER_T * money if money is not None else None,
         currency=plant.currency,

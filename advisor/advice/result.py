@@ -11,7 +11,9 @@ from typing import Literal
 
 Authority = Literal["safety", "supplier", "contract", "national", "house", "computed"]
 Side = Literal["low", "high"]
-Point = Literal["binder_tank", "hot_aggregate", "discharge", "silo", "load_out", "delivery"]
+Point = Literal[
+    "binder_tank", "hot_aggregate", "discharge", "silo", "load_out", "delivery", "stack"
+]
 HowKnown = Literal["looked up", "derived", "common practice", "from memory", "entered", "measured"]
 
 # Highest authority first: where limits clash, the one of lower authority is the one to question.
@@ -158,11 +160,39 @@ class Heat:
     gross_kwh_t: float
     net_kwh_t: float
     co2_kg_t: float
-    stack_dew_point_c: float
-    hot_aggregate_c: float | None
     moisture_of_dry_mass: float
     money_t: float | None = None
     currency: str = ""
+
+
+@dataclass(frozen=True)
+class Burner:
+    """What to expect of burner and stack at the advised discharge temperature.
+
+    ``load`` is of the burner's rating [1], above 1 where it cannot; ``fuel_kgs`` [kg/s] and
+    ``gross_w`` [W] are what it burns; the stack is told as low, expected and high [C] between its
+    two ``stack_limits``; ``acid_dew_point_c`` is None for a fuel without sulfur. ``most_kgs`` is
+    the most the plant can make at today's moisture and ``most_set_by`` 'burner', 'fan' or 'plant'.
+    ``load_now`` and ``stack_now_c`` are read from the log, ``load_expected_now`` is the load that
+    what is made now should take; None where the log does not tell.
+    """
+
+    load: float
+    fuel_kgs: float
+    gross_w: float
+    stack_low_c: float
+    stack_c: float
+    stack_high_c: float
+    stack_limits: tuple[Limit, Limit]
+    dew_point_c: float
+    acid_dew_point_c: float | None
+    exhaust_m3s: float
+    rate_kgs: float
+    most_kgs: float
+    most_set_by: str
+    load_now: float | None = None
+    load_expected_now: float | None = None
+    stack_now_c: float | None = None
 
 
 @dataclass(frozen=True)
@@ -193,6 +223,8 @@ class Advice:
     path: tuple[PathPoint, ...] = ()
     rolling: Rolling | None = None
     heat: Heat | None = None
+    burner: Burner | None = None
+    most_rap_of_mix: float | None = None
     contributions: tuple[Contribution, ...] = ()
     confidence: float = 0.95
     felt_truck_min: float | None = None

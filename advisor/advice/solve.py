@@ -76,6 +76,10 @@ class Solution:
     set_aside: tuple[Limit, ...]
     squeezed: bool
 
+    def at(self, point: Point) -> Setpoint:
+        """The setpoint at ``point``; KeyError where there is none."""
+        return {one.point: one for one in self.setpoints}[point]
+
 
 def discharge_bounds(
     limits: Sequence[tuple[Limit, Floats | float]], legs: Mapping[Point, Leg], confidence: float
