@@ -12,12 +12,12 @@ from advisor.advice.advise import CRITERION, sensor_sd_k
 from advisor.advice.bands import Band, band_of
 from advisor.advice.case import path_case
 from advisor.advice.limits import collect_limits
-from advisor.advice.path import PathCase, draw_path, rolling_times_s
-from advisor.advice.result import Caution, Limit
+from advisor.advice.path import DRAWN, PathCase, draw_path, rolling_times_s
+from advisor.advice.result import Caution, Contribution, Limit
 from advisor.advice.situation import Situation
 from advisor.errors import Fault, FaultyInput, MissingInput
 from advisor.heat import Box, Faces, MixThermal, retained_in_truck, share_below
-from advisor.sampling import Draws, quantile, share_true
+from advisor.sampling import Draws, contributions_sd, quantile, share_true
 from advisor.settings.cautions import caution_text
 
 Floats = NDArray[np.float64]
@@ -36,7 +36,8 @@ class LoadAhead:
     planned there. ``wait_min`` is how long it may wait from arriving on, at most two hours;
     ``wait_safe_min`` is what holds with the plant's confidence. ``need_c`` is the temperature
     wanted at delivery, set by ``need_set_by``; ``chance`` that the planned wait keeps it.
-    ``cold_share`` is how much of the load is colder than that, were it not remixed.
+    ``cold_share`` is how much of the load is colder than that, were it not remixed;
+    ``contributions`` are the degrees of doubt each input adds to ``delivered_c``.
     """
 
     job: str
@@ -57,6 +58,7 @@ class LoadAhead:
     rolling_end_c: float
     cold_share: float
     weather_from: str
+    contributions: tuple[Contribution, ...]
     cautions: tuple[Caution, ...]
 
 
@@ -121,9 +123,19 @@ def load_ahead(situation: Situation, load_out_c: float, loaded_at: datetime) -> 
         rolling_wanted_min=float(job.rolling_wanted) / 60.0,
         rolling_end_c=case.rolling_end_c,
         cold_share=_cold_share(case, load_out_c, needed[governs]),
+        contributions=_contributions(delivered, draws),
         weather_from=situation.weather.origin if situation.weather else "",
         cautions=(Caution("C1", caution_text("C1")), Caution("C12", caution_text("C12"))),
     )
+
+
+def _contributions(delivered_c: Floats, draws: Draws) -> tuple[Contribution, ...]:
+    names = {name: DRAWN[name] for name in ("air", "haul", "wait", "truck", "conductivity",
+                                            "heat capacity")}  # fmt: skip
+    inputs = {words: draws.scores(name) for name, words in names.items()}
+    inputs["load-out gauge"] = draws.scores("load-out gauge")
+    shares = contributions_sd(delivered_c, inputs)
+    return tuple(Contribution(name, sd) for name, sd in shares.items() if sd >= 0.05)
 
 
 def refuse_missing(situation: Situation) -> None:

@@ -64,12 +64,16 @@ class Setpoint:
 
 @dataclass(frozen=True)
 class Remedy:
-    """One way out of a clash, with what it gains; negative where it is not enough alone."""
+    """One way out of a clash: what it gains at discharge, whether that is enough, what it costs.
+
+    ``cost`` is told in time, mass or money where that is known, else as 'not priced'.
+    """
 
     action: str
     gain_k: float
     enough: bool
     caution: str = ""
+    cost: str = "not priced"
 
 
 @dataclass(frozen=True)

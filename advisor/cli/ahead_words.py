@@ -60,6 +60,11 @@ def print_load(load: LoadAhead, zone: ZoneInfo, units: UnitSystem) -> None:
         f"- Not remixed, {load.cold_share:.0%} of the load would be colder than {need}. "
         f"Weather: {load.weather_from}."
     )
+    doubts = ", ".join(
+        f"{one.name} {shown(one.sd_k, 'temperature_delta', units)}"
+        for one in load.contributions[:4]
+    )
+    click.echo(f"- Uncertain by: {doubts} (standard deviation at delivery).")
     _cautions(load.cautions)
 
 

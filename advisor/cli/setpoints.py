@@ -124,7 +124,7 @@ def _print_clash(advice: Advice, units: UnitSystem) -> None:
     for one in clash.remedies:
         gain = shown(one.gain_k, "temperature_delta", units)
         enough = "enough" if one.enough else "not enough alone"
-        click.echo(f"  {gain}: {one.action} ({enough}). {one.caution}".rstrip())
+        click.echo(f"  {gain}: {one.action} ({enough}). Cost: {one.cost}. {one.caution}".rstrip())
 
 
 def _print_more(advice: Advice, units: UnitSystem) -> None:

@@ -216,7 +216,16 @@ def clash_block(clash: Clash, units: UnitSystem) -> object:
             html.H2("Ways out"),
             html.Table(
                 [
-                    html.Thead(html.Tr([html.Th("Do this"), html.Th("gains"), html.Th("alone")])),
+                    html.Thead(
+                        html.Tr(
+                            [
+                                html.Th("Do this"),
+                                html.Th("gains"),
+                                html.Th("alone"),
+                                html.Th("costs"),
+                            ]
+                        )
+                    ),
                     html.Tbody(
                         [
                             html.Tr(
@@ -227,6 +236,7 @@ def clash_block(clash: Clash, units: UnitSystem) -> object:
                                         "enough" if one.enough else "not enough",
                                         className="short",
                                     ),
+                                    html.Td(one.cost),
                                 ]
                             )
                             for one in clash.remedies

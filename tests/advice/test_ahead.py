@@ -296,3 +296,14 @@ def test_nothing_seen_later_reaches_the_coming_hours(demo):
     for hours in (0, 40):
         with pytest.raises(FaultyInput, match="1 and 36"):
             day_ahead(demo, NOW, "J02", hours=hours)
+
+
+def test_what_makes_a_load_uncertain_adds_up(demo):
+    found = load_ahead(gather_situation(demo, NOW, "J04"), 168.0, NOW)
+    sds = [one.sd_k for one in found.contributions]
+    assert sds == sorted(sds, reverse=True)
+    # 5 % to 95 % of a normal quantity are 3.29 standard deviations apart
+    spread = (found.delivered_c.high - found.delivered_c.low) / 3.29
+    assert np.sqrt(np.sum(np.square(sds))) == pytest.approx(spread, rel=0.15)
+    names = {one.name for one in found.contributions}
+    assert {"heat loss of the truck", "load-out gauge"} <= names
