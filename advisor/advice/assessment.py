@@ -38,6 +38,7 @@ from advisor.binder import (
     typing_doubts,
     unit_confusion,
 )
+from advisor.binder.tank import FLASH_MARGIN_K
 from advisor.binder.windows import Purpose
 from advisor.errors import OutsideValidity
 from advisor.settings.binder_tables import (
@@ -66,6 +67,7 @@ from advisor.settings.certificate import (
     ShearSweep,
     SteadyShear,
 )
+from advisor.units import UnitSystem, shown
 
 HOTTER_K = (10.0, 20.0)
 _SWEEP_C = 80.0  # the phase angle method reads the master curve at 80 C, NCHRP 648 (from memory)
@@ -94,8 +96,10 @@ class Assessment:
     cautions: tuple[str, ...]
 
 
-def assess(certificate: Certificate, target: str = "mixing") -> Assessment:
-    """What ``certificate`` says, with the mixing rule called ``target``.
+def assess(
+    certificate: Certificate, target: str = "mixing", units: UnitSystem = "si"
+) -> Assessment:
+    """What ``certificate`` says, with the mixing rule called ``target``, told in ``units``.
 
     Raises FaultyInput where config/ has no such target, MissingInput where a kinematic viscosity
     comes without a density.
@@ -111,9 +115,9 @@ def assess(certificate: Certificate, target: str = "mixing") -> Assessment:
     if flash is not None and hottest is not None:
         margin = flash - float(hottest.high_c)
     made_at = float(hottest.target_c) if hottest is not None else None
-    ageing = [] if curve is None else [_usual_hardening(curve)]
+    ageing = [] if curve is None else [_usual_hardening(curve, units)]
     if made_at is not None:
-        ageing += [mixing_hardening(made_at, one) for one in HOTTER_K]
+        ageing += [mixing_hardening(made_at, one, units) for one in HOTTER_K]
     return Assessment(
         certificate,
         grade,
@@ -127,11 +131,11 @@ def assess(certificate: Certificate, target: str = "mixing") -> Assessment:
         tuple(ageing),
         _checks(certificate, grade, sheet),
         _doubts(certificate),
-        (*_cautions(certificate, grade, sheet, margin), *crossed),
+        (*_cautions(certificate, grade, sheet, margin, units), *crossed),
     )
 
 
-def _usual_hardening(curve: ViscosityCurve) -> Hardening:
+def _usual_hardening(curve: ViscosityCurve, units: UnitSystem) -> Hardening:
     """What mixing and laying do to this binder, by its resistance to hardening."""
     before = float(curve.viscosity_pas(135.0))
     low, middle, high = (
@@ -142,7 +146,8 @@ def _usual_hardening(curve: ViscosityCurve) -> Hardening:
         low,
         middle,
         high,
-        f"Mixing and laying make it {low:.1f} to {high:.1f} times as viscous at 135 C, "
+        f"Mixing and laying make it {low:.1f} to {high:.1f} times as viscous at "
+        f"{shown(135.0, 'temperature', units)}, "
         f"{middle:.1f} times with average resistance to hardening (Mirza and Witczak 1995, from "
         "memory).",
     )
@@ -335,7 +340,11 @@ def _doubts(certificate: Certificate) -> tuple[Doubt, ...]:
 
 
 def _cautions(
-    certificate: Certificate, grade: Grade | None, sheet: SheetCurve, margin: float | None
+    certificate: Certificate,
+    grade: Grade | None,
+    sheet: SheetCurve,
+    margin: float | None,
+    units: UnitSystem,
 ) -> Iterable[str]:
     if grade is None:
         yield f"The grade '{certificate.grade}' is not known here: no limits were checked."
@@ -344,10 +353,10 @@ def _cautions(
             f"{grade.name} is reached with a modifier as a rule, and the sheet says none: ask the "
             "supplier before using the rule for plain binder."
         )
-    if margin is not None and margin < 30.0:
+    if margin is not None and margin < FLASH_MARGIN_K:
         yield (
-            f"The mixing window ends {margin:.0f} K below the flash point; 30 K are wanted "
-            "(Eurobitume)."
+            f"The mixing window ends {shown(margin, 'temperature_delta', units)} below the flash "
+            f"point; {shown(FLASH_MARGIN_K, 'temperature_delta', units)} are wanted (Eurobitume)."
         )
     if certificate.flash_c is None:
         yield "No flash point on the sheet: the margin to it cannot be checked."

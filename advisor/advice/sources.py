@@ -19,9 +19,10 @@ from advisor.errors import MissingInput
 from advisor.settings.binder_tables import viscosity_target
 from advisor.settings.binders import certificate_readings, certificate_sheet, target_window
 from advisor.settings.certificate import Certificate
+from advisor.units import UnitSystem, shown_number, shown_unit
 
 
-def compare(older: Certificate, newer: Certificate) -> SourceChange:
+def compare(older: Certificate, newer: Certificate, units: UnitSystem = "si") -> SourceChange:
     """How far every temperature shifts from ``older`` to ``newer``, and whether tests can see it.
 
     Where one laboratory measured both only its own repeatability counts. Raises MissingInput where
@@ -40,7 +41,7 @@ def compare(older: Certificate, newer: Certificate) -> SourceChange:
             )
         curves.append(sheet.curve)
     asked = [(name, viscosity_target(name).target) for name in ("mixing", "compaction", "pumping")]
-    return compare_curves(curves[0], curves[1], asked, same_laboratory=same)
+    return compare_curves(curves[0], curves[1], asked, same_laboratory=same, units=units)
 
 
 def with_rap(
@@ -78,6 +79,7 @@ def with_rap(
 class SourceHistory:
     """Successive certificates of one source: mixing temperatures [C] in date order, and drift.
 
+    The chart is in the units it was asked for.
     ``chart`` is None where there are too few; ``words`` then says so. ``left_out`` names lots
     whose readings alone fix no curve.
     """
@@ -91,21 +93,27 @@ class SourceHistory:
     left_out: tuple[str, ...]
 
 
-def histories(certificates: Sequence[Certificate]) -> tuple[SourceHistory, ...]:
+def histories(
+    certificates: Sequence[Certificate], units: UnitSystem = "si"
+) -> tuple[SourceHistory, ...]:
     """The history of every source with two certificates or more, oldest certificate first."""
     by_source: dict[str, list[Certificate]] = {}
     for one in sorted(certificates, key=lambda one: (one.tested_on, one.lot)):
         by_source.setdefault(f"{one.source}, {one.grade}", []).append(one)
-    return tuple(_history(name, sheets) for name, sheets in by_source.items() if len(sheets) > 1)
+    return tuple(
+        _history(name, sheets, units) for name, sheets in by_source.items() if len(sheets) > 1
+    )
 
 
-def _history(source: str, sheets: Sequence[Certificate]) -> SourceHistory:
+def _history(source: str, sheets: Sequence[Certificate], units: UnitSystem) -> SourceHistory:
     wanted = viscosity_target("mixing").target
     kept = [(one, curve) for one in sheets if (curve := _measured_curve(one)) is not None]
     values = tuple(float(curve.temperature_c(wanted)) for _, curve in kept)
-    test_sd = max((float(curve.temperature_sd_k(wanted)) for _, curve in kept), default=0.0)
+    test_sd_k = max((float(curve.temperature_sd_k(wanted)) for _, curve in kept), default=0.0)
+    told = [shown_number(value, "temperature", units) for value in values]
+    test_sd = shown_number(test_sd_k, "temperature_delta", units)
     try:
-        chart: DriftChart | None = drift_chart(values, test_sd, "C")
+        chart: DriftChart | None = drift_chart(told, test_sd, shown_unit("temperature", units))
         words = chart.sentence if chart else ""
     except MissingInput as error:
         chart, words = None, str(error)

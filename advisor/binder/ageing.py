@@ -12,7 +12,7 @@ from advisor.binder.curve import ViscosityCurve
 from advisor.binder.fit import AvtsPrior
 from advisor.binder.laws import GAS_CONSTANT_J_MOLK, log_rankine, loglog_viscosity
 from advisor.errors import FaultyInput
-from advisor.units import ABSOLUTE_ZERO_C
+from advisor.units import ABSOLUTE_ZERO_C, UnitSystem, shown
 
 Floats = NDArray[np.float64]
 Resistance = Literal["excellent to good", "average", "fair", "poor"]
@@ -206,7 +206,7 @@ class Hardening:
     sentence: str
 
 
-def mixing_hardening(mixing_c: float, hotter_k: float) -> Hardening:
+def mixing_hardening(mixing_c: float, hotter_k: float, units: UnitSystem = "si") -> Hardening:
     """How much more the binder hardens when mixed hotter, as a factor on its viscosity at 135 C.
 
     The hardening that is usual in mixing and laying is taken to happen at the temperature of now.
@@ -217,6 +217,7 @@ def mixing_hardening(mixing_c: float, hotter_k: float) -> Hardening:
     Args:
         mixing_c: temperature the mix is made at now [C].
         hotter_k: how much hotter [K]; negative for cooler.
+        units: units of the sentence.
 
     Source: activation energies of Liu et al. 1996 (looked up, near 60 to 100 C); hardening codes
     of Mirza and Witczak and the softening point rule (from memory). A plant study in Virginia,
@@ -236,14 +237,19 @@ def mixing_hardening(mixing_c: float, hotter_k: float) -> Hardening:
         low,
         middle,
         high,
-        f"Mixed {abs(hotter_k):.0f} K {word}, the binder leaves the plant with {low:.2f} to "
-        f"{high:.2f} times its usual viscosity at 135 C (middle {middle:.2f}); plant studies "
-        "conflict, so take this as a size, not a figure.",
+        f"Mixed {shown(abs(hotter_k), 'temperature_delta', units)} {word}, the binder leaves the "
+        f"plant with {low:.2f} to {high:.2f} times its usual viscosity at "
+        f"{shown(135.0, 'temperature', units)} (middle {middle:.2f}); plant studies conflict, so "
+        "take this as a size, not a figure.",
     )
 
 
 def tank_hardening(
-    hours: float, tank_c: float, surface_m2_per_t: float, circulated: bool = False
+    hours: float,
+    tank_c: float,
+    surface_m2_per_t: float,
+    circulated: bool = False,
+    units: UnitSystem = "si",
 ) -> Hardening:
     """Hardening of binder stored in a tank, as a factor on its viscosity at 135 C.
 
@@ -254,6 +260,7 @@ def tank_hardening(
         tank_c: temperature [C].
         surface_m2_per_t: exposed surface per tonne [m2/t], see ``exposed_surface_m2_t``.
         circulated: whether the return falls through air or the tank is stirred hard.
+        units: units of the sentence.
 
     Raises:
         FaultyInput: a negative time or surface.
@@ -278,8 +285,9 @@ def tank_hardening(
         1.0,
         middle,
         high,
-        f"After {hours:.0f} h at {tank_c:.0f} C the binder may have up to {high:.2f} times its "
-        "viscosity at 135 C; one large still tank showed no change in four weeks.",
+        f"After {hours:.0f} h at {shown(tank_c, 'temperature', units)} the binder may have up to "
+        f"{high:.2f} times its viscosity at {shown(135.0, 'temperature', units)}; one large still "
+        "tank showed no change in four weeks.",
     )
 
 

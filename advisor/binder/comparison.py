@@ -10,6 +10,7 @@ import numpy as np
 
 from advisor.binder.curve import ViscosityCurve, two_sided_score
 from advisor.binder.fit import fit_avts
+from advisor.units import UnitSystem, shown
 
 # Shifts below the first are irrelevant to a plant, above the second they are acted on at once.
 # Common practice, no source: width of the mixing window and tank thermometer.
@@ -48,6 +49,7 @@ def compare_curves(
     *,
     same_laboratory: bool = False,
     confidence: float = 0.95,
+    units: UnitSystem = "si",
 ) -> SourceChange:
     """Shift of every temperature between two binders with its standard error.
 
@@ -60,6 +62,7 @@ def compare_curves(
         viscosities: name and viscosity [Pa.s] of every temperature asked for, the first decides.
         same_laboratory: whether one laboratory measured both.
         confidence: share of chance differences that must lie below [1].
+        units: units of the sentences.
 
     Source: difference of two independent results, ASTM C670.
     """
@@ -75,7 +78,9 @@ def compare_curves(
     first = shifts[0]
     settled = _settled_error_k(older, newer, first.viscosity_pas)
     return SourceChange(
-        tuple(shifts), _sentence(first, score, same_laboratory), _settles(first, settled, score)
+        tuple(shifts),
+        _sentence(first, score, same_laboratory, units),
+        _settles(first, settled, score, units),
     )
 
 
@@ -105,30 +110,37 @@ def _settled_error_k(older: ViscosityCurve, newer: ViscosityCurve, viscosity_pas
     )
 
 
-def _sentence(shift: Shift, score: float, same_laboratory: bool) -> str:
+def _sentence(shift: Shift, score: float, same_laboratory: bool, units: UnitSystem) -> str:
     who = "one laboratory" if same_laboratory else "different laboratories"
     word = "hotter" if shift.shift_k >= 0.0 else "cooler"
     size = (
-        f"For {shift.name} the newer binder runs {abs(shift.shift_k):.1f} K {word}, plus or minus "
-        f"{score * shift.standard_error_k:.1f} K ({who})"
+        f"For {shift.name} the newer binder runs {_delta(abs(shift.shift_k), units)} {word}, "
+        f"plus or minus {_delta(score * shift.standard_error_k, units)} ({who})"
     )
     if not shift.detectable:
         return f"{size}: that may be chance alone, the tests cannot tell the two apart."
     if abs(shift.shift_k) < RELEVANT_K:
-        return f"{size}: real, but less than {RELEVANT_K:g} K does not matter to the plant."
+        return (
+            f"{size}: real, but less than {_delta(RELEVANT_K, units)} does not matter to the plant."
+        )
     if abs(shift.shift_k) < LARGE_K:
         return f"{size}: a real change, set the temperatures anew."
     return f"{size}: a large change, act before the first load is mixed."
 
 
-def _settles(shift: Shift, settled_k: float, score: float) -> str:
+def _settles(shift: Shift, settled_k: float, score: float, units: UnitSystem) -> str:
     plan = (
         "Retained samples of both, measured by one laboratory at "
-        f"{_SETTLE_AT_C[0]:g} and {_SETTLE_AT_C[1]:g} C on one day, would show differences from "
-        f"{score * settled_k:.1f} K."
+        f"{shown(_SETTLE_AT_C[0], 'temperature', units)} and "
+        f"{shown(_SETTLE_AT_C[1], 'temperature', units)} on one day, would show differences from "
+        f"{_delta(score * settled_k, units)}."
     )
     if shift.detectable:
         return f"Settled by the sheets. {plan}"
     if abs(shift.shift_k) > score * settled_k:
         return f"{plan} The shift seen here would then stand out."
     return f"{plan} The shift seen here would still be too small to matter."
+
+
+def _delta(value_k: float, units: UnitSystem) -> str:
+    return shown(value_k, "temperature_delta", units)

@@ -75,7 +75,7 @@ def drift_chart(
     outside = np.flatnonzero(np.maximum(rising, falling) > LIMIT_SD)
     signal = int(outside[0]) if outside.size else None
     since = None
-    sentence = f"No drift: {x.size} certificates about {centre:.3g} {unit}, spread {sd:.2g} {unit}."
+    sentence = f"No drift: {x.size} certificates about {centre:.4g} {unit}, spread {sd:.2g} {unit}."
     if signal is not None:
         up = rising[signal] > LIMIT_SD
         sums = rising if up else falling
@@ -84,7 +84,7 @@ def drift_chart(
         recent = float(x[since : signal + 1].mean())
         sentence = (
             f"Drift {'upwards' if up else 'downwards'} since certificate {since + 1}: on average "
-            f"{recent:.3g} {unit} against {centre:.3g} before, seen at certificate {signal + 1}. "
+            f"{recent:.4g} {unit} against {centre:.4g} before, seen at certificate {signal + 1}. "
             "Ask the supplier what changed and confirm with a test of your own."
         )
     return DriftChart(centre, sd, x, rising, falling, LIMIT_SD, signal, since, sentence)

@@ -88,15 +88,15 @@ def binder(
 
     sheets = _chosen(read_certificates(files), lot)
     older = None if against is None else _only(read_certificates([against]), "--against")
-    one_sheet = older is not None or also["rap"] is not None
+    one_sheet = older is not None or also["rap"] is not None or chart is not None
     newer = _only(sheets, "FILES") if one_sheet else sheets[0]
-    found = [assess(sheet, target) for sheet in sheets]
-    before = None if older is None else assess(older, target)
-    change = None if older is None else compare(older, newer)
+    found = [assess(sheet, target, units) for sheet in sheets]
+    before = None if older is None else assess(older, target, units)
+    change = None if older is None else compare(older, newer, units)
     blended = _blended(newer, also["rap"], also["rap_share"], also["blending"])
     kept_hot = _kept_hot(also["stored"], also["stored_at"], also["liquid"], also["circulated"],
-                         also["in_silo"])  # fmt: skip
-    past = histories(sheets)
+                         also["in_silo"], units)  # fmt: skip
+    past = histories(sheets, units)
     if chart is not None:
         _write_chart(chart, found[0], before, units)
     if as_json:
@@ -137,7 +137,7 @@ def _only(sheets: Sequence[Certificate], where: str) -> Certificate:
     if len(sheets) != 1:
         raise FaultyInput.of(
             "one-sheet",
-            f"One sheet is wanted here; {where} hold{'s' * (where != 'FILES')} {len(sheets)}.",
+            f"One sheet is wanted for this; {where} hold{'s' * (where != 'FILES')} {len(sheets)}.",
             "Choose one with --lot, or give a file with one sheet.",
         )
     return sheets[0]
@@ -164,7 +164,12 @@ def _blended(
 
 
 def _kept_hot(
-    stored: str | None, at: str | None, liquid: str | None, circulated: bool, in_silo: str | None
+    stored: str | None,
+    at: str | None,
+    liquid: str | None,
+    circulated: bool,
+    in_silo: str | None,
+    units: UnitSystem,
 ) -> tuple[str, ...]:
     """What tank and silo do to the binder, in sentences; none where it is not asked for."""
     from advisor.binder import exposed_surface_m2_t, silo_ageing_caution, tank_hardening
@@ -188,7 +193,8 @@ def _kept_hot(
         hours = parse_quantity(stored, "duration") / 3600.0
         hot_c = parse_quantity(at, "temperature")
         surface = float(exposed_surface_m2_t(height))
-        found.append(f"In the tank: {tank_hardening(hours, hot_c, surface, circulated).sentence}")
+        hardening = tank_hardening(hours, hot_c, surface, circulated, units)
+        found.append(f"In the tank: {hardening.sentence}")
     if in_silo is not None:
         hours = parse_quantity(in_silo, "duration") / 3600.0
         quiet = f"{hours:.0f} h in the silo: no hardening to reckon with in dense mix."

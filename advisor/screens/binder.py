@@ -2,15 +2,17 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
 from typing import Any
 
 from dash import Dash, Input, Output, State, dcc, html
 
 from advisor.advice.assessment import Assessment, assess
-from advisor.advice.sources import compare
+from advisor.advice.sources import compare, histories
 from advisor.binder import SourceChange
 from advisor.errors import AdvisorError
 from advisor.figures.base import STILL, blank
+from advisor.figures.drift import drift_figure
 from advisor.figures.ink import Ink, ink_of
 from advisor.figures.viscosity import viscosity_chart, viscosity_words
 from advisor.screens import binder_parts as parts
@@ -25,14 +27,15 @@ PAGE = "binder"
 TITLE = "Binder"
 PATH = "/binder"
 CHART_PX = 420
+LOTS_PX = 190
 # What the page is made of, in the columns it stands in.
 _LEFT = (
-    ("readings", "Readings"),
     ("checks", "Checks"),
     ("hardening", "Hardening"),
     ("cautions", "Cautions"),
 )
 _RIGHT = (("moves", "What moves"), ("windows", "Windows"), ("tank", "Tank"))
+_NAMES = tuple(dict((*_LEFT, *_RIGHT)))
 
 
 def layout(source: Source, search: str | None) -> Any:
@@ -77,6 +80,23 @@ def layout(source: Source, search: str | None) -> Any:
                         ],
                         className="sheet chart",
                     ),
+                    _section("readings", "Readings"),
+                    html.Section(
+                        [
+                            html.H2("Lots of this source, temperature at 0.17 Pa.s"),
+                            html.P(id=id_of(PAGE, "lots-words")),
+                            dcc.Graph(
+                                id=id_of(PAGE, "lots"),
+                                figure=blank(),
+                                config=STILL,
+                                className="graph",
+                                style={"height": f"{LOTS_PX}px"},
+                            ),
+                        ],
+                        id=id_of(PAGE, "lots-place"),
+                        className="sheet lots",
+                        hidden=True,
+                    ),
                     *(_section(part, title) for part, title in _LEFT),
                 ],
                 className="column",
@@ -115,8 +135,12 @@ def register(app: Dash, source: Source) -> None:
 
     @app.callback(
         output={
-            name: Output(id_of(PAGE, name), "figure" if name == "chart" else "children")
-            for name in ("heading", "chart", "chart-words", *dict((*_LEFT, *_RIGHT)))
+            **{
+                name: Output(id_of(PAGE, name), "children")
+                for name in ("heading", "chart-words", "readings", "lots-words", *_NAMES)
+            },
+            **{name: Output(id_of(PAGE, name), "figure") for name in ("chart", "lots")},
+            "lots-hidden": Output(id_of(PAGE, "lots-place"), "hidden"),
         },
         inputs={
             "lot": Input(id_of(PAGE, "lot"), "value"),
@@ -133,7 +157,8 @@ def register(app: Dash, source: Source) -> None:
         if lot not in sheets:
             return _empty(parts.nothing())
         try:
-            return _shown(sheets[lot], sheets.get(against or ""), units, ink_of(scheme))
+            found = _shown(sheets[lot], sheets.get(against or ""), units, ink_of(scheme))
+            return found | _lots(sheets[lot], sheets.values(), units, ink_of(scheme))
         except AdvisorError as error:
             return _empty(error_block(error, f"Lot {lot} cannot be judged"))
 
@@ -142,9 +167,9 @@ def _shown(
     sheet: Certificate, older: Certificate | None, units: UnitSystem, ink: Ink
 ) -> dict[str, Any]:
     """Every part of the page for one certificate and the one it is compared with."""
-    one = assess(sheet)
-    before = None if older is None or older.lot == sheet.lot else assess(older)
-    change = _change(before, one)
+    one = assess(sheet, units=units)
+    before = None if older is None or older.lot == sheet.lot else assess(older, units=units)
+    change = _change(before, one, units)
     return {
         "heading": parts.heading(one),
         "chart": viscosity_chart(one, before, ink, units),
@@ -159,21 +184,42 @@ def _shown(
     }
 
 
-def _change(before: Assessment | None, one: Assessment) -> SourceChange | AdvisorError | None:
+def _lots(
+    sheet: Certificate, sheets: Iterable[Certificate], units: UnitSystem, ink: Ink
+) -> dict[str, Any]:
+    """The lots of the same source and grade, where there is more than one."""
+    alike = [one for one in sheets if (one.source, one.grade) == (sheet.source, sheet.grade)]
+    found = histories(alike, units)
+    if not found:
+        return {"lots": blank(), "lots-words": "", "lots-hidden": True}
+    return {
+        "lots": drift_figure(found[0], ink, units),
+        "lots-words": found[0].words,
+        "lots-hidden": False,
+    }
+
+
+def _change(
+    before: Assessment | None, one: Assessment, units: UnitSystem
+) -> SourceChange | AdvisorError | None:
     if before is None:
         return None
     try:
-        return compare(before.certificate, one.certificate)
+        return compare(before.certificate, one.certificate, units)
     except AdvisorError as error:
         return error
 
 
 def _empty(instead: Any) -> dict[str, Any]:
     """The page where there is no certificate to show, or it cannot be judged."""
-    names = dict((*_LEFT, *_RIGHT))
     return {
         "heading": instead,
         "chart": blank(),
         "chart-words": "No chart.",
-        **dict.fromkeys(names, html.P("Not known without a certificate.", className="quiet")),
+        "lots": blank(),
+        "lots-words": "",
+        "lots-hidden": True,
+        **dict.fromkeys(
+            ("readings", *_NAMES), html.P("Not known without a certificate.", className="quiet")
+        ),
     }

@@ -8,7 +8,9 @@ import numpy as np
 import pytest
 
 from advisor.advice.assessment import Assessment, assess
+from advisor.advice.sources import histories
 from advisor.binder import log_rankine, loglog_viscosity
+from advisor.figures.drift import drift_figure
 from advisor.figures.ink import DARK
 from advisor.figures.viscosity import viscosity_chart, viscosity_page, viscosity_words
 from advisor.settings.certificate_files import read_certificates
@@ -76,6 +78,19 @@ def test_the_old_curve_and_the_third_law_are_dashed_behind() -> None:
     assert drawn(figure, "lot T-100, before").line.dash == "dash"
     assert drawn(figure, "lot T-200").line.color == DARK.target
     assert drawn(viscosity_chart(of("bent")), "law of three constants (VFT)").line.dash == "dash"
+
+
+def test_the_lots_of_a_drift_stand_out_from_those_before() -> None:
+    history = histories(read_certificates([SHEETS / "series.yaml"]))[0]
+    lots = drift_figure(history).data[0]
+    first = history.chart.since
+    symbols = list(lots.marker.symbol)
+    assert set(symbols[:first]) == {"circle"}
+    assert set(symbols[first:]) == {"triangle-up"}
+    assert len(lots.x) == len(history.lots) == 18
+    fahrenheit = histories(read_certificates([SHEETS / "series.yaml"]), "us")[0]
+    assert "°F" in fahrenheit.words
+    assert fahrenheit.chart.signal == history.chart.signal
 
 
 def test_rubber_has_its_readings_and_no_line() -> None:

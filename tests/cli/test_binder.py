@@ -35,7 +35,7 @@ def test_a_sheet_is_told_from_readings_to_checks(run) -> None:
     assert code == 0
     for words in (
         "kept, not used", "left out: bulb B", "log10 log10(cP)", "0.15 to 0.19 Pa.s",
-        "Pumps from", "30.0 °C are wanted", "Mixed 10 K hotter", "Mixed 20 K hotter",
+        "Pumps from", "30.0 °C are wanted", "Mixed 10.0 °C hotter", "Mixed 20.0 °C hotter",
         "inside    Penetration at 25 C: 58 dmm", "from memory",
     ):  # fmt: skip
         assert words in out
@@ -44,6 +44,7 @@ def test_a_sheet_is_told_from_readings_to_checks(run) -> None:
 def test_fahrenheit_for_those_who_use_it(run) -> None:
     _, out, _ = run(sheet("plain"), "--us")
     assert "309 °F" in out
+    assert "Mixed 18.0 °F hotter" in out
 
 
 def test_a_modified_binder_gets_the_suppliers_range_or_no_number(run) -> None:
@@ -101,7 +102,7 @@ def test_a_surfactant_added_at_the_plant_lowers_the_window_with_its_source(run) 
 def test_two_sources_are_compared_and_the_shift_is_judged(run) -> None:
     _, out, _ = run(sheet("second_source"), "--against", sheet("plain"))
     assert "From lot T-100 to lot T-200" in out
-    assert "K hotter, plus or minus" in out
+    assert "°C hotter, plus or minus" in out
     assert "Retained samples of both" in out
 
 
@@ -128,7 +129,7 @@ def test_rap_storage_and_silo_are_reckoned_where_asked(run, tmp_path: Path) -> N
         sheet("plain"), "--stored", "10 d", "--stored-at", "170 C", "--liquid", "1.2 m",
         "--in-silo", "30 h",
     )  # fmt: skip
-    assert "After 240 h at 170 C" in out
+    assert "After 240 h at 170 °C" in out
     assert "sample before use" in out
 
 
@@ -172,6 +173,7 @@ def test_every_fault_of_a_sheet_is_told_at_once_with_its_line(run) -> None:
         ([sheet("plain"), "--lot", "T-1"], "Known here: T-100"),
         ([sheet("plain"), "--target", "mixin"], "Did you mean 'mixing'?"),
         ([sheet("series"), "--against", sheet("plain")], "One sheet is wanted"),
+        ([sheet("series"), "--chart", "chart.html"], "One sheet is wanted"),
         ([sheet("plain"), "--chart", "chart.png"], "ends with .html"),
         ([sheet("plain"), "--rap", sheet("plain")], "go together"),
         ([sheet("plain"), "--stored", "3 d"], "go together"),

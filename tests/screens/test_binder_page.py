@@ -25,7 +25,7 @@ def certificates(folder):
 
 def opened(page):
     page.wait_for_selector(".binder h1", timeout=WAIT)
-    page.wait_for_selector(".binder .main-svg", timeout=WAIT)
+    page.wait_for_selector("#binder-chart .main-svg", timeout=WAIT)
     return page
 
 
@@ -62,7 +62,7 @@ def test_the_page_shows_the_windows_and_what_moves(open_page, picture, demo_addr
 @pytest.mark.browser
 def test_chart_and_windows_need_no_scrolling(open_page, demo_address):
     page = opened(open_page(f"{demo_address}binder?lot=B-4410&against=A-2641"))
-    chart = page.locator(".binder .js-plotly-plot").bounding_box()
+    chart = page.locator("#binder-chart").bounding_box()
     assert chart
     assert chart["y"] + chart["height"] <= 768
     assert page.locator("section.windows").bounding_box()["y"] < 500
@@ -95,7 +95,8 @@ class WithSheets(MadeUpPlant):
     """The made-up plant with sheets of its own, one mistyped and one of rubber."""
 
     def certificates(self, at):
-        return read_certificates([SHEETS / "ten_times.yaml", SHEETS / "rubber.yaml"])
+        names = ("ten_times", "rubber", "series")
+        return read_certificates([SHEETS / f"{name}.yaml" for name in names])
 
 
 @pytest.mark.browser
@@ -106,6 +107,18 @@ def test_a_likely_mistake_stands_at_the_top_and_rubber_has_no_curve(open_page):
         page = opened(open_page(f"{address}binder?lot=T-600&against=T-900"))
         expect(page.locator("section.readings")).to_contain_text("No viscosity line", timeout=WAIT)
         expect(page.locator("section.moves")).to_contain_text("gives no curve to compare")
+
+
+@pytest.mark.browser
+def test_a_drifting_source_is_seen_beside_its_newest_lot(open_page, picture):
+    with served(WithSheets()) as address:
+        page = opened(open_page(f"{address}binder?lot=S-18"))
+        lots = page.locator("section.lots")
+        expect(lots).to_contain_text("Drift upwards since certificate", timeout=WAIT)
+        page.wait_for_selector("section.lots .main-svg", timeout=WAIT)
+        picture(page, "binder-drift", whole=True)
+        page = opened(open_page(f"{address}binder?lot=T-600"))
+        expect(page.locator("section.lots")).to_be_hidden(timeout=WAIT)
 
 
 @pytest.mark.browser
