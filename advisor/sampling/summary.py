@@ -59,7 +59,8 @@ def contributions_sd(output: ArrayLike, inputs: Mapping[str, ArrayLike]) -> dict
         return {}
     columns = np.stack([np.asarray(inputs[name], float) for name in names], axis=-1)
     columns = (columns - columns.mean(axis=0)) / columns.std(axis=0)
-    weights, *_ = np.linalg.lstsq(columns, centred, rcond=None)
+    # Through the small matrix of products: the columns are as good as independent.
+    weights, *_ = np.linalg.lstsq(columns.T @ columns, columns.T @ centred, rcond=None)
     shares = {name: abs(float(weight)) for name, weight in zip(names, weights, strict=True)}
     shares["interaction"] = float(np.std(centred - columns @ weights))
     return dict(sorted(shares.items(), key=lambda pair: -pair[1]))
