@@ -12,6 +12,7 @@ from advisor.settings.cautions import caution_text
 from advisor.units import shown
 
 _HOUR = timedelta(hours=1)
+_WITHIN = 0.01  # a share told as a whole percent
 
 
 def reasons_of(situation: Situation, solution: Solution) -> tuple[Reason, ...]:
@@ -29,6 +30,15 @@ def reasons_of(situation: Situation, solution: Solution) -> tuple[Reason, ...]:
                 "squeezed",
                 "The window is narrower than the plant's own scatter: the target is its middle, "
                 "and some mix will fall outside. Watch the discharge closely.",
+            )
+        )
+    elif solution.kept < situation.facts.folder.plant.confidence - _WITHIN:
+        found.append(
+            Reason(
+                "target",
+                f"Target: {margin} above low, the middle of the coating window, as wide as the "
+                f"plant's scatter: {solution.kept:.0%} of the mix stays above low. Hotter would "
+                "put as much above high.",
             )
         )
     else:

@@ -13,7 +13,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from advisor.advice.result import AUTHORITIES, Clash, Limit, Point, Setpoint
-from advisor.sampling import quantile
+from advisor.sampling import quantile, share_true
 
 Floats = NDArray[np.float64]
 
@@ -67,7 +67,10 @@ class Coating:
 
 @dataclass(frozen=True)
 class Solution:
-    """Setpoints, or the two bounds that clash; the bounds themselves for the reasons."""
+    """Setpoints, or the two bounds that clash; the bounds themselves for the reasons.
+
+    ``kept`` is the share of the mix [1] that keeps every low bound at the target, scatter included.
+    """
 
     setpoints: tuple[Setpoint, ...]
     lows: tuple[Bound, ...]
@@ -75,6 +78,7 @@ class Solution:
     clash: Clash | None
     set_aside: tuple[Limit, ...]
     squeezed: bool
+    kept: float = 0.0
 
     def at(self, point: Point) -> Setpoint:
         """The setpoint at ``point``; KeyError where there is none."""
@@ -141,7 +145,9 @@ def solve(
         target = 0.5 * (low.at_discharge_c + high.at_discharge_c)
     target = max(target, low.at_discharge_c)
     points = tuple(_setpoint(point, legs, target, low, high, lows, confidence) for point in legs)
-    return Solution(points, lows, highs, None, set_aside, squeezed)
+    needed = np.max(np.stack([one.draws_c for one in lows]), axis=0)
+    kept = float(share_true(needed + scatter_k <= target))
+    return Solution(points, lows, highs, None, set_aside, squeezed, kept)
 
 
 def _target_c(

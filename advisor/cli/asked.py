@@ -28,6 +28,26 @@ class PlantPath(click.ParamType[Path]):
         return shipped_folder("demo_plant")
 
 
+class Asked(click.ParamType[float]):
+    """A quantity of ``kind`` written with its unit, such as '10 C', as a number in SI."""
+
+    def __init__(self, kind: str) -> None:
+        self.kind = kind
+        self.name = kind
+
+    def convert(
+        self, value: Any, param: click.Parameter | None, ctx: click.Context | None
+    ) -> float:
+        """The number that ``value`` says."""
+        from advisor.errors import FaultyInput
+        from advisor.units import parse_quantity
+
+        try:
+            return parse_quantity(value, self.kind)
+        except FaultyInput as error:
+            self.fail(str(error), param, ctx)
+
+
 def plant_argument(command: Callable[..., Any]) -> Callable[..., Any]:
     """Add the argument PLANT to ``command``."""
     return click.argument("plant", type=PlantPath(), metavar="PLANT")(command)

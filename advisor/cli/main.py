@@ -15,6 +15,7 @@ from advisor.errors import AdvisorError, Fault, FaultyInput
 COMMANDS = {
     "setpoints": "What to run now: low, target and high at every point, and why.",
     "ahead": "What comes: a load, a change, a silo overnight, a tank at rest, the day.",
+    "what-if": "The same job run another way: fuel and money against margin.",
     "review": "Where, when and why the plant ran over or under, and what it cost.",
     "dashboard": "The pages for operator, QC and manager, in a browser.",
     "binder": "From laboratory readings to viscosity, window and doubt.",
@@ -34,7 +35,8 @@ class Commands(click.Group):
         """The command called ``cmd_name``, or None."""
         if cmd_name not in COMMANDS:
             return None
-        command = getattr(importlib.import_module(f"advisor.cli.{cmd_name}"), cmd_name)
+        word = cmd_name.replace("-", "_")
+        command = getattr(importlib.import_module(f"advisor.cli.{word}"), word)
         return command if isinstance(command, click.Command) else None
 
     def format_commands(self, ctx: click.Context, formatter: click.HelpFormatter) -> None:

@@ -11,22 +11,9 @@ import pytest
 from click.testing import CliRunner
 
 from advisor.cli import main as entry
-from advisor.cli.main import COMMANDS, advisor, main
+from advisor.cli.main import COMMANDS, advisor
 
 FRIDAY = "2026-10-23 10:10"
-
-
-@pytest.fixture
-def run(capsys):
-    """Exit code, output and errors of the program called with words."""
-
-    def called(*words):
-        with pytest.raises(SystemExit) as left:
-            main([str(word) for word in words])
-        out, err = capsys.readouterr()
-        return left.value.code, out, err
-
-    return called
 
 
 @pytest.mark.parametrize("name", COMMANDS)
