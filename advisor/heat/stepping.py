@@ -46,6 +46,8 @@ class Stepper:
         self._inverse = np.empty_like(cells.start_c)
         self._factors = list(np.empty_like(cells.link))
         self._spare = np.empty_like(cells.to_top)
+        # A single case is worked out in plain numbers: an array of one costs ten times as much.
+        self._alone = cells.start_c.shape[1] == 1
         self._set_faces(0.0, just_before=False)
         self._set_conductance()
         self.surface_c = self.temperature_c[0].copy()
@@ -116,6 +118,9 @@ class Stepper:
         pivots, links, factors, spare = self._pivots, self._links, self._factors, self._spare
         np.add(weight, self.neighbours, out=self._pivot)
         self._pivot[-1] += self._conductance
+        if self._alone:
+            self._single = _eliminated(self._pivot[:, 0].tolist(), self._links)
+            return
         for i in range(len(factors) - 1, -1, -1):
             np.divide(links[i], pivots[i + 1], out=factors[i])
             np.multiply(factors[i], links[i], out=spare)
@@ -124,6 +129,8 @@ class Stepper:
 
     def _solve(self, right: Floats) -> Floats:
         """Solves in place for the temperatures; returns what the top face passes [W/m2]."""
+        if self._alone:
+            return self._solve_one(right)
         rows, factors, spare = list(right), self._factors, self._spare
         for i in range(len(factors) - 1, -1, -1):
             np.multiply(factors[i], rows[i + 1], out=spare)
@@ -138,6 +145,33 @@ class Stepper:
             np.multiply(factor, rows[i], out=spare)
             np.add(rows[i + 1], spare, out=rows[i + 1])
         return passed
+
+    def _solve_one(self, right: Floats) -> Floats:
+        """What ``_solve`` does, for a single case in plain numbers."""
+        pivots, factors = self._single
+        rows = right[:, 0].tolist()
+        for i in range(len(factors) - 1, -1, -1):
+            rows[i] += factors[i] * rows[i + 1]
+        pivot = pivots[0]
+        half = float(self.half_top[0])
+        passed = self._surface_one(pivot * half / (pivot + half), rows[0] / pivot)
+        rows[0] = (rows[0] - passed) / pivot
+        for i, factor in enumerate(factors):
+            rows[i + 1] = rows[i + 1] / pivots[i + 1] + factor * rows[i]
+        right[:, 0] = rows
+        return np.array([passed])
+
+    def _surface_one(self, conductance: float, behind_c: float) -> float:
+        """What ``_surface`` does, for a single case in plain numbers."""
+        lost = conductance + self._coefficient_one
+        gained = conductance * behind_c + self._given_one
+        surface, grey = float(self.surface_c[0]), self._grey_one
+        for _ in range(2 if self.radiates else 0):
+            kelvin = surface + ZERO_C_IN_K
+            cubed = grey * kelvin**3
+            surface -= (lost * surface + cubed * kelvin - gained) / (lost + 4.0 * cubed)
+        self.surface_c = np.array([surface if self.radiates else gained / lost])
+        return conductance * (behind_c - float(self.surface_c[0]))
 
     def _surface(self, conductance: Floats, behind_c: Floats) -> Floats:
         """Heat [W/m2] that passes the top face; moves ``surface_c`` to where it balances."""
@@ -188,6 +222,11 @@ class Stepper:
         self._grey = top.emissivity * STEFAN_BOLTZMANN_WM2K4
         radiated = self._grey * (top.sky_c + ZERO_C_IN_K) ** 4
         self._given_top = top.coefficient_wm2k * top.air_c + top.gain_wm2 + radiated
+        if self._alone:
+            self._grey_one, self._given_one, self._coefficient_one = (
+                float(np.ravel(one)[0])
+                for one in (self._grey, self._given_top, top.coefficient_wm2k)
+            )
         outside = bottom.coefficient_wm2k
         given = outside * bottom.air_c + bottom.gain_wm2
         self._source = self.half_bottom * given / (self.half_bottom + outside)
@@ -195,6 +234,16 @@ class Stepper:
     def _set_conductance(self) -> None:
         outside = self._bottom.coefficient_wm2k
         self._conductance = self.half_bottom * outside / (self.half_bottom + outside)
+
+
+def _eliminated(pivots: list[float], links: list[Floats]) -> tuple[list[float], list[float]]:
+    """Pivots and factors of a single case, from the bottom up."""
+    factors = [0.0] * (len(pivots) - 1)
+    for i in range(len(factors) - 1, -1, -1):
+        link = float(links[i][0])
+        factors[i] = link / pivots[i + 1]
+        pivots[i] -= factors[i] * link
+    return pivots, factors
 
 
 def advance(
