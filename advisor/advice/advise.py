@@ -52,12 +52,18 @@ def advise_all(
     ``brief`` leaves out rolling times, doubts, remedies and fuel, for a timeline.
     """
     draws = Draws(draw_count)
+    paths = draw_paths(situations, draws)
+    return [
+        advise_on(one, path, draws, brief) if path else _missing(one)
+        for one, path in zip(situations, paths, strict=True)
+    ]
+
+
+def draw_paths(situations: Sequence[Situation], draws: Draws) -> list[PathDraws | None]:
+    """The heat path of every situation, in one call; None where something is missing."""
     known = [one for one in situations if not one.missing]
     paths = iter(draw_path([path_case(one) for one in known], draws, CRITERION) if known else [])
-    return [
-        _missing(one) if one.missing else _advice(one, next(paths), draws, brief)
-        for one in situations
-    ]
+    return [None if one.missing else next(paths) for one in situations]
 
 
 def scatter_k(situation: Situation, draws: Draws) -> np.ndarray:
@@ -79,7 +85,8 @@ def sensor_sd_k(sensor: Sensor, at_c: float) -> float:
     return float(tolerance) / _EVEN
 
 
-def _advice(situation: Situation, path: PathDraws, draws: Draws, brief: bool) -> Advice:
+def advise_on(situation: Situation, path: PathDraws, draws: Draws, brief: bool = False) -> Advice:
+    """The advice for a situation that lacks nothing, on its heat path as drawn."""
     folder = situation.facts.folder
     binder = situation.binder
     assert binder is not None  # noqa: S101 - asked for only where nothing is missing
@@ -136,7 +143,7 @@ def _in_full(
     hold_min, road_min = situation.hold_s[1] / 60.0, situation.job.on_road_s / 60.0
     return replace(
         advice,
-        path=_path_points(advice.setpoints, path, situation),
+        path=path_points(advice.setpoints, path, situation),
         rolling=Rolling(
             low_min=float(quantile(rolling, 0.05)),
             middle_min=float(quantile(rolling, 0.5)),
@@ -223,7 +230,7 @@ _STATIONS = (
 )
 
 
-def _path_points(
+def path_points(
     setpoints: Sequence[Setpoint], path: PathDraws, situation: Situation
 ) -> tuple[PathPoint, ...]:
     """Stations of the heat path with minutes after discharge; the last is the first roller pass."""

@@ -7,16 +7,23 @@ from dataclasses import dataclass, replace
 
 import numpy as np
 
-from advisor.advice.advise import CRITERION, DRAW_COUNT, advise_all, scatter_k
+from advisor.advice.advise import (
+    CRITERION,
+    DRAW_COUNT,
+    advise_on,
+    draw_paths,
+    path_points,
+    scatter_k,
+)
 from advisor.advice.burner import stack_rise_of
-from advisor.advice.case import path_case
 from advisor.advice.fuel import fuel_called, kelvin_too_much, money_per_j, operation_of
 from advisor.advice.limits import collect_limits
-from advisor.advice.path import draw_path
-from advisor.advice.result import Advice
+from advisor.advice.path import PathDraws, rolling_times_s
+from advisor.advice.result import Advice, PathPoint
 from advisor.advice.situation import Situation
 from advisor.advice.solve import discharge_bounds
 from advisor.dryer import (
+    HeatBalance,
     HeatChange,
     Operation,
     Range,
@@ -30,7 +37,7 @@ from advisor.dryer import (
     with_fuel,
 )
 from advisor.errors import FaultyInput, MissingInput
-from advisor.sampling import Draws, share_true
+from advisor.sampling import Draws, quantile, share_true
 from advisor.settings.faults import nearest
 from advisor.settings.mixes import Additive
 from advisor.settings.tables import Row, load_table
@@ -96,6 +103,9 @@ class Way:
     kept: float | None
     gross_kwh_t: float
     parts: tuple[tuple[str, float], ...]
+    arrives_c: float
+    rolling_min: tuple[float, float, float]
+    path: tuple[PathPoint, ...]
 
 
 @dataclass(frozen=True)
@@ -123,7 +133,9 @@ class DegreeAndWater:
 
 
 def what_if(
-    situation: Situation, changes: Sequence[Changes], draw_count: int = DRAW_COUNT
+    situation: Situation,
+    changes: Sequence[Changes],
+    draw_count: int = DRAW_COUNT,
 ) -> list[WhatIf]:
     """Each of ``changes`` against the advised target of ``situation``.
 
@@ -134,26 +146,28 @@ def what_if(
         raise MissingInput.of("no-advice", " ".join(situation.missing), "Enter it first.")
     changed = [_changed(situation, one) for one in changes]
     draws = Draws(draw_count)
-    advices = advise_all([situation, *changed], draw_count, brief=True)
-    start = advices[0].setpoint("discharge")
+    every = [situation, *changed]
+    ways = [
+        _Drawn(one, path, draws)
+        for one, path in zip(every, draw_paths(every, draws), strict=True)
+        if path is not None
+    ]
+    before = ways[0]
+    start = before.advice.setpoint("discharge")
     if start is None:
         raise MissingInput.of(
             "no-target",
             "There is no safe window for this job, so there is no target to compare with.",
             "Choose another job, or look at the remedies of its advice.",
         )
-    kept = _kept_share([situation, *changed], draws)
     found = []
-    for place, (one, then) in enumerate(zip(changes, changed, strict=True), 1):
-        target = advices[place].setpoint("discharge")
+    for one, after in zip(changes, ways[1:], strict=True):
+        target = after.advice.setpoint("discharge")
         if one.cooler_k is not None:
             discharge = start.target_c - one.cooler_k
         else:
             discharge = target.target_c if target else start.target_c
-        found.append(
-            _compared(situation, then, one, (advices[0], advices[place]),
-                      (start.target_c, discharge), (kept[0], kept[place]))
-        )  # fmt: skip
+        found.append(_compared(before, after, one, start.target_c, discharge))
     return found
 
 
@@ -169,31 +183,60 @@ def degree_and_water(situation: Situation, discharge_c: float) -> DegreeAndWater
     )
 
 
-class _Kept:
-    """The share of the mix that keeps its low bounds, at any discharge temperature."""
+class _Drawn:
+    """A situation with its heat path in draws and its advice in brief."""
 
-    def __init__(self, situation: Situation, needed_c: np.ndarray, draws: Draws) -> None:
-        self._needed_c = needed_c + scatter_k(situation, draws)
+    def __init__(self, situation: Situation, path: PathDraws, draws: Draws) -> None:
+        self.situation, self.path = situation, path
+        self.advice = advise_on(situation, path, draws, brief=True)
+        self._scatter_k = scatter_k(situation, draws)
 
-    def at(self, discharge_c: float) -> float:
-        """Share [1] of the mix at ``discharge_c`` [C]."""
-        return float(share_true(self._needed_c <= discharge_c))
+    def way(self, discharge_c: float, balance: HeatBalance) -> Way:
+        """How it runs at ``discharge_c`` [C]."""
+        window = self.advice.setpoint("discharge")
+        arriving = self.path.legs["delivery"].at_point(discharge_c)
+        rolling = rolling_times_s(self.path, arriving, CRITERION) / 60.0
+        return Way(
+            advice=self.advice,
+            discharge_c=discharge_c,
+            above_low_k=discharge_c - window.low_c if window else None,
+            kept=self._kept(discharge_c) if window else None,
+            gross_kwh_t=float(balance.gross_j_kg) / _J_KG_PER_KWH_T,
+            parts=tuple(
+                (name.replace("_", " "), float(part) / _J_KG_PER_KWH_T)
+                for name, part in balance.parts.rows()
+            ),
+            arrives_c=float(np.median(arriving)),
+            rolling_min=(
+                float(quantile(rolling, 0.05)),
+                float(quantile(rolling, 0.5)),
+                float(quantile(rolling, 0.95)),
+            ),
+            path=self._path(discharge_c) if window else (),
+        )
 
-
-def _kept_share(situations: Sequence[Situation], draws: Draws) -> list[_Kept]:
-    paths = draw_path([path_case(one) for one in situations], draws, CRITERION)
-    found = []
-    for one, path in zip(situations, paths, strict=True):
-        folder = one.facts.folder
-        assert one.binder is not None  # noqa: S101 - asked for only where nothing is missing
-        limits = collect_limits(folder, one.mix, one.job, one.binder, path)
+    def _kept(self, discharge_c: float) -> float:
+        """Share [1] of the mix at ``discharge_c`` [C] that keeps every low bound."""
+        situation = self.situation
+        assert situation.binder is not None  # noqa: S101 - nothing is missing here
+        folder = situation.facts.folder
+        limits = collect_limits(folder, situation.mix, situation.job, situation.binder, self.path)
         every = list(limits.path)
         if limits.coating:
             every.append((limits.coating.low, limits.coating.low.value_c))
-        lows, _ = discharge_bounds(every, path.legs, float(folder.plant.confidence))
+        lows, _ = discharge_bounds(every, self.path.legs, float(folder.plant.confidence))
         needed = np.max(np.stack([low.draws_c for low in lows]), axis=0)
-        found.append(_Kept(one, needed, draws))
-    return found
+        return float(share_true(needed + self._scatter_k <= discharge_c))
+
+    def _path(self, discharge_c: float) -> tuple[PathPoint, ...]:
+        """The window along the path, with the line of ``discharge_c`` [C] as its target."""
+        legs = self.path.legs
+        moved = [
+            replace(one, target_c=float(np.median(legs[one.point].at_point(discharge_c))))
+            for one in self.advice.setpoints
+            if one.point in legs
+        ]
+        return path_points(moved, self.path, self.situation)
 
 
 def _changed(situation: Situation, changes: Changes) -> Situation:
@@ -261,19 +304,14 @@ def _additive(name: str) -> Additive:
 
 
 def _compared(
-    before: Situation,
-    after: Situation,
-    changes: Changes,
-    advices: tuple[Advice, Advice],
-    discharge_c: tuple[float, float],
-    kept: tuple[_Kept, _Kept],
+    before: _Drawn, after: _Drawn, changes: Changes, from_c: float, to_c: float
 ) -> WhatIf:
-    dryer = before.facts.folder.plant.dryer
+    dryer = before.situation.facts.folder.plant.dryer
     rise = stack_rise_of(dryer.kind)
-    base = operation_of(before, discharge_c[0])
-    other = _other_dryer(operation_of(after, discharge_c[0]), changes)
+    base = operation_of(before.situation, from_c)
+    other = _other_dryer(operation_of(after.situation, from_c), changes)
     moved = [
-        heat_change(base, at_discharge(other, discharge_c[1], one))
+        heat_change(base, at_discharge(other, to_c, one))
         for one in (rise.low, rise.central, rise.high)
     ]
     spent = sorted(float(one.gross_j_kg) for one in moved)
@@ -285,21 +323,18 @@ def _compared(
     notes = []
     energies = load_table("overheating").row("oxidation of binder")
     oxidation = sorted(
-        float(oxidation_growth(discharge_c[1], discharge_c[0], energies[side]))
-        for side in ("low", "high")
+        float(oxidation_growth(to_c, from_c, energies[side])) for side in ("low", "high")
     )
     if changes.fuel is not None:
         notes.append(f"The price of {changes.fuel} is not known here: no money is told.")
-    if advices[1].clash:
-        notes.append(
-            f"No safe window: {advices[1].clash.lower.name} clashes with "
-            f"{advices[1].clash.upper.name}."
-        )
+    clash = after.advice.clash
+    if clash:
+        notes.append(f"No safe window: {clash.lower.name} clashes with {clash.upper.name}.")
     return WhatIf(
-        before=_way(advices[0], discharge_c[0], kept[0], moved[1], after=False),
-        after=_way(advices[1], discharge_c[1], kept[1], moved[1], after=True),
-        saved=_saved(before, saved_j_kg, moved[1], priced=changes.fuel is None),
-        fume_of_before=float(fume_growth(discharge_c[1], discharge_c[0])),
+        before=before.way(from_c, moved[1].before),
+        after=after.way(to_c, moved[1].after),
+        saved=_saved(before.situation, saved_j_kg, moved[1], priced=changes.fuel is None),
+        fume_of_before=float(fume_growth(to_c, from_c)),
         oxidation_of_before=(oxidation[0], oxidation[1]),
         notes=tuple(notes),
     )
@@ -311,24 +346,6 @@ def _other_dryer(operation: Operation, changes: Changes) -> Operation:
     if changes.air_ratio is not None:
         operation = with_air_ratio(operation, changes.air_ratio)
     return operation
-
-
-def _way(
-    advice: Advice, discharge_c: float, kept: _Kept, change: HeatChange, *, after: bool
-) -> Way:
-    balance = change.after if after else change.before
-    window = advice.setpoint("discharge")
-    return Way(
-        advice=advice,
-        discharge_c=discharge_c,
-        above_low_k=discharge_c - window.low_c if window else None,
-        kept=kept.at(discharge_c) if window else None,
-        gross_kwh_t=float(balance.gross_j_kg) / _J_KG_PER_KWH_T,
-        parts=tuple(
-            (name.replace("_", " "), float(part) / _J_KG_PER_KWH_T)
-            for name, part in balance.parts.rows()
-        ),
-    )
 
 
 def _saved(situation: Situation, saved_j_kg: Range, change: HeatChange, *, priced: bool) -> Saved:
