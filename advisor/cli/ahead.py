@@ -233,19 +233,11 @@ class _opened:
 
 
 def _moment(text: str, facts: PlantFacts, after: datetime | None = None) -> datetime:
-    """The moment of ``text``; a bare time of day is the next one ``after`` that."""
-    import re
-    from datetime import timedelta
-
-    from advisor.settings.moments import utc_of
+    """The moment of ``text``; with ``after`` a bare time of day is the next one."""
+    from advisor.settings.moments import next_moment, utc_of
 
     zone = facts.folder.zone
-    if after is None or not re.fullmatch(r"\d?\d:\d\d", text.strip()):
-        return utc_of(text, zone)
-    clock = text.strip().zfill(5)
-    today = after.astimezone(zone).date()
-    moment = utc_of(f"{today} {clock}", zone)
-    return moment if moment > after else utc_of(f"{today + timedelta(days=1)} {clock}", zone)
+    return utc_of(text, zone) if after is None else next_moment(text, zone, after)
 
 
 def _number(text: str | None, kind: str, field: str) -> float | None:

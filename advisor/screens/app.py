@@ -8,12 +8,12 @@ from typing import Any
 from dash import ClientsideFunction, Dash, Input, Output, dcc, html
 
 from advisor.figures.ink import style_sheet
-from advisor.screens import binder, review, shift
+from advisor.screens import ahead, binder, review, shift
 from advisor.screens.shift_parts import clock
 from advisor.screens.source import Source
 
 # The pages that exist, in the order of the navigation.
-PAGES: tuple[ModuleType, ...] = (shift, review, binder)
+PAGES: tuple[ModuleType, ...] = (shift, ahead, review, binder)
 
 _INDEX = """<!DOCTYPE html>
 <html lang="en">

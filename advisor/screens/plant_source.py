@@ -188,6 +188,18 @@ class PlantSource:
         held = _as_known(self._facts, at).all_held("certificate", end=at)
         return [entry.fact for entry in reversed(held)]
 
+    def ask(self, question: Hashable, at: datetime, work: Callable[[PlantFacts], T]) -> T:
+        """What ``work`` answers of the plant as it was known ``at``; quick when asked again."""
+        return self._kept(("ask", question, at), lambda: work(_as_known(self._facts, at)))
+
+    def situation(self, job: str | None, units: UnitSystem = "si") -> Situation:
+        """What is known now for ``job``, or for the job that runs."""
+        moment = self.now()
+        facts = replace(self._facts, units=units)
+        return self._kept(
+            ("situation", job, moment, units), lambda: gather_situation(facts, moment, job)
+        )
+
     def tickets(self, start: datetime, end: datetime) -> Sequence[TicketPoint]:
         """The truck loads from ``start`` to ``end``."""
         if self._log is None:

@@ -2,17 +2,21 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Callable, Hashable, Sequence
 from dataclasses import dataclass
 from datetime import datetime
-from typing import Protocol
+from typing import Protocol, TypeVar
 from zoneinfo import ZoneInfo
 
+from advisor.advice.facts import PlantFacts
 from advisor.advice.result import Advice
+from advisor.advice.situation import Situation
 from advisor.figures.drawn import Reading, TicketPoint, Trace, WindowSpan
 from advisor.review.result import Excursion, Review
 from advisor.settings.certificate import Certificate
 from advisor.units import UnitSystem
+
+T = TypeVar("T")
 
 # Plant logs come once a minute; after five missed ones the reading is history, not the present.
 # Common practice, no source.
@@ -99,6 +103,15 @@ class Source(Protocol):
 
     def certificates(self, at: datetime) -> Sequence[Certificate]:
         """The binder certificates recorded by ``at``, the newest first."""
+
+    def ask(self, question: Hashable, at: datetime, work: Callable[[PlantFacts], T]) -> T:
+        """What ``work`` answers of the plant as it was known ``at``; quick when asked again.
+
+        ``question`` names the work and what it was given.
+        """
+
+    def situation(self, job: str | None, units: UnitSystem = "si") -> Situation:
+        """What is known now for ``job``, or for the job that runs."""
 
     def tickets(self, start: datetime, end: datetime) -> Sequence[TicketPoint]:
         """The truck loads from ``start`` to ``end``."""

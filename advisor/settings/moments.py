@@ -3,10 +3,12 @@
 from __future__ import annotations
 
 import datetime as dt
+import re
 from zoneinfo import ZoneInfo
 
 from advisor.errors import FaultyInput
 
+_CLOCK = re.compile(r"\d\d:\d\d")
 _EXAMPLE = "Write it as 2026-10-19 06:10 (plant time) or 2026-10-19T06:10+01:00."
 
 
@@ -36,6 +38,19 @@ def utc_of(text: str, zone: ZoneInfo) -> dt.datetime:
         )
         raise FaultyInput.of("moment", problem, remedy, value=text)
     return earlier
+
+
+def next_moment(text: str, zone: ZoneInfo, after: dt.datetime) -> dt.datetime:
+    """The moment, in UTC, of ``text`` in ``zone``; a bare time of day is the next one ``after``.
+
+    Raises FaultyInput as ``utc_of`` does.
+    """
+    clock = text.strip().zfill(5)
+    if not _CLOCK.fullmatch(clock):
+        return utc_of(text.strip(), zone)
+    today = after.astimezone(zone).date()
+    moment = utc_of(f"{today} {clock}", zone)
+    return moment if moment > after else utc_of(f"{today + dt.timedelta(days=1)} {clock}", zone)
 
 
 def local_text(moment: dt.datetime, zone: ZoneInfo) -> str:

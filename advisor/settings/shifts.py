@@ -21,6 +21,19 @@ def shift_end(shifts: Sequence[Shift], local: datetime) -> datetime | None:
     return min(ends).astimezone(UTC) if ends else None
 
 
+def next_start(shifts: Sequence[Shift], after: datetime) -> datetime | None:
+    """When the first shift after ``after``, an aware plant time, starts [UTC]; None without one."""
+    starts = [
+        datetime.combine(day, shift.start, tzinfo=after.tzinfo)
+        for ahead in range(8)
+        for day in (after.date() + timedelta(days=ahead),)
+        for shift in shifts
+        if _DAYS[day.weekday()] in shift.days
+    ]
+    later = [one for one in starts if one > after]
+    return min(later).astimezone(UTC) if later else None
+
+
 def _on(shifts: Sequence[Shift], local: datetime) -> list[tuple[Shift, datetime]]:
     """Shifts of the day of ``local`` and of the day before that are on, with their ends."""
     found = []
