@@ -8,12 +8,12 @@ from typing import Any
 from dash import ClientsideFunction, Dash, Input, Output, dcc, html
 
 from advisor.figures.ink import style_sheet
-from advisor.screens import ahead, binder, review, shift
+from advisor.screens import ahead, binder, review, shift, what_if
 from advisor.screens.shift_parts import clock
 from advisor.screens.source import Source
 
 # The pages that exist, in the order of the navigation.
-PAGES: tuple[ModuleType, ...] = (shift, ahead, review, binder)
+PAGES: tuple[ModuleType, ...] = (shift, ahead, review, binder, what_if)
 
 _INDEX = """<!DOCTYPE html>
 <html lang="en">

@@ -260,6 +260,9 @@ class MadeUpPlant:
     def certificates(self, at: datetime) -> Sequence[Certificate]:
         return ()
 
+    def situation(self, job: str | None, units: str = "si"):
+        raise MissingInput.of("made-up", "A made-up plant has no situation.", "Use a real one.")
+
     def tickets(self, start: datetime, end: datetime) -> Sequence[TicketPoint]:
         count = max(int((end - start) / timedelta(minutes=12)), 0)
         return tuple(
