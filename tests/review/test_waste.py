@@ -28,3 +28,14 @@ def test_a_season_of_200_000_t_eight_kelvin_too_hot_is_about_680_mwh():
 
 def test_a_missing_reading_costs_nothing():
     assert excess_tk(np.array([np.nan]), np.array([165.0]), np.array([1e4]))[0] == 0.0
+
+
+@pytest.mark.parametrize(
+    ("mean_above", "phantom"), [(0.0, 1.19683), (-5.0, 0.0594797), (5.0, 5.05948)]
+)
+def test_noise_alone_reads_as_excess_so_it_is_taken_out_first(mean_above, phantom):
+    # mean of max(0, x) for a normal reading of 3 K scatter: mu Phi(mu/s) + s phi(mu/s) (derived)
+    random = np.random.default_rng(11)
+    readings = 165.0 + mean_above + random.normal(0.0, 3.0, 400_000)
+    found = excess_tk(readings, np.full(readings.size, 165.0), np.full(readings.size, 1000.0))
+    assert found.mean() == pytest.approx(phantom, abs=0.01)
