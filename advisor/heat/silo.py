@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 from scipy.special import erfcx
@@ -122,11 +122,11 @@ def stored_mix(
     Raises FaultyInput for a negative time.
     """
     start, air = np.asarray(start_c, float), np.asarray(air_c, float)
-    barrel = air + retained_in_silo(hold_s, silo, mix) * (start - air)
-    sees = air
-    if silo.cone_c is not None:
-        sees = np.asarray(silo.cone_c, float)
-        barrel = barrel + cone_share(hold_s, silo, mix) * (sees - air)
+    # Mix in the cone lies between the barrel and the faces of the cone: heat comes a few decimetres
+    # in a day, so the barrel loses through wall and top alone, and the cone for itself.
+    shielded = replace(silo, cone_wm2k=0.0)
+    barrel = air + retained_in_silo(hold_s, shielded, mix) * (start - air)
+    sees = air if silo.cone_c is None else np.asarray(silo.cone_c, float)
     ball = Span(silo.cone_ball_m, silo.cone_wm2k, curvature=2)
     first = sees + ball.retained(hold_s, mix) * (start - sees)
     volume = np.pi * np.asarray(silo.radius_m, float) ** 2 * np.asarray(silo.fill_m, float)

@@ -232,11 +232,11 @@ def test_flanks_of_a_load_on_a_long_haul() -> None:
 def test_first_truck_out_of_the_silo() -> None:
     """A trade article: the first truck is 10 to 20 F under the next ones.
 
-    Ours is after 8 to 16 h with 3 W/m2K through cone and gate; with a cone as well insulated as
-    the barrel it would be half of that.
+    Ours is after 8 to 16 h with 2.5 W/m2K through cone and gate; with a cone as well insulated as
+    the barrel it would be a third of that.
     """
-    silo = Silo(2.0, 7.0, 2.8, wall_wm2k=0.8, top_wm2k=0.8, cone_wm2k=3.0)
+    silo = Silo(2.0, 7.0, 2.8, wall_wm2k=0.8, top_wm2k=0.8, cone_wm2k=2.5)
     held = stored_mix(np.array([8.0, 16.0]) * 3600, silo, LOOSE, 160.0, 10.0)
     least = kelvin_delta_from_fahrenheit_delta(value("FIRSTTRUCK-LO"))
     behind = held.mean_c - held.first_out_c
-    assert ((behind > 0.8 * least) & (behind < 2.2 * least)).all()
+    assert ((behind > least) & (behind < 2.0 * least)).all()

@@ -105,6 +105,28 @@ def test_a_heated_cone_warms_what_comes_out_first() -> None:
     assert stored_mix(hold, same, LOOSE, 160.0, 10.0).first_out_c == pytest.approx(160.0)
 
 
+def test_mix_in_the_cone_shields_the_barrel() -> None:
+    """A column of 2 m of cone under the barrel: in two days the barrel feels the cold below little.
+
+    So a bare cone takes from the barrel only what its own mix has lost, not once more.
+    """
+    run = conduct(
+        (Layer(2.0, 0.9, LOOSE.capacity_jm3k, 160.0, cells=30, spacing="top"),),
+        Face(8.0, 10.0),
+        growing_times_s(48 * 3600.0, 60),
+        depths_m=np.array([1.0, 2.0]),
+    )
+    assert 160.0 - run.depth_c[1, -1, 0] < 0.05
+    bare = Silo(1.85, 7.0, 2.6, 0.8, 0.8, 8.0)
+    tight = Silo(1.85, 7.0, 2.6, 0.8, 0.8, 0.0)
+    lost = [stored_mix(12 * 3600.0, one, LOOSE, 160.0, 10.0) for one in (bare, tight)]
+    cone_m3 = bare.cone_volume_m3
+    share = cone_m3 / (cone_m3 + np.pi * 1.85**2 * 7.0)
+    assert lost[1].mean_c - lost[0].mean_c == pytest.approx(
+        share * (160.0 - lost[0].first_out_c), rel=1e-9
+    )
+
+
 def test_a_share_of_the_cone_is_what_the_solver_gives() -> None:
     """A column between a sealed top and a cone that is one kelvin warmer than all else."""
     hold = 24 * 3600.0
