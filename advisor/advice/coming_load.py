@@ -16,7 +16,7 @@ from advisor.advice.path import DRAWN, PathCase, draw_path, rolling_times_s
 from advisor.advice.result import Caution, Contribution, Limit
 from advisor.advice.situation import Situation
 from advisor.errors import Fault, FaultyInput, MissingInput
-from advisor.heat import Box, Faces, MixThermal, retained_in_truck, share_below
+from advisor.heat import Box, Faces, MixThermal, load_state, retained_in_truck, share_below
 from advisor.sampling import Draws, contributions_sd, quantile, share_true
 from advisor.settings.cautions import caution_text
 
@@ -36,6 +36,7 @@ class LoadAhead:
     planned there. ``wait_min`` is how long it may wait from arriving on, at most two hours;
     ``wait_safe_min`` is what holds with the plant's confidence. ``need_c`` is the temperature
     wanted at delivery, set by ``need_set_by``; ``chance`` that the planned wait keeps it.
+    ``crust_c`` is the middle of the coldest face of a usual load as it is tipped.
     ``cold_share`` is how much of the load is colder than that, were it not remixed;
     ``contributions`` are the degrees of doubt each input adds to ``delivered_c``.
     """
@@ -56,6 +57,7 @@ class LoadAhead:
     rolling_min: Band
     rolling_wanted_min: float
     rolling_end_c: float
+    crust_c: float
     cold_share: float
     weather_from: str
     contributions: tuple[Contribution, ...]
@@ -122,6 +124,7 @@ def load_ahead(situation: Situation, load_out_c: float, loaded_at: datetime) -> 
         rolling_min=band_of(rolling_times_s(path, delivered, CRITERION) / 60.0),
         rolling_wanted_min=float(job.rolling_wanted) / 60.0,
         rolling_end_c=case.rolling_end_c,
+        crust_c=_crust_c(case, load_out_c),
         cold_share=_cold_share(case, load_out_c, needed[governs]),
         contributions=_contributions(delivered, draws),
         weather_from=situation.weather.origin if situation.weather else "",
@@ -185,21 +188,27 @@ def _crossing_s(at_wait: Floats, need: Floats) -> Floats:
     return np.where(count == 0, 0.0, np.where(count == len(_WAITS_S), LONGEST_WAIT_S, found))
 
 
+def _crust_c(case: PathCase, load_out_c: float) -> float:
+    state = load_state(
+        case.haul_s, _box(case), Faces(*case.moving_wm2k), _loose(case),
+        standing_s=case.wait_s, standing=Faces(*case.standing_wm2k),
+    )  # fmt: skip
+    return case.air_c + float(state.crust) * (load_out_c - case.air_c)
+
+
 def _cold_share(case: PathCase, load_out_c: float, need_c: float) -> float:
     """Share of a usual load colder than ``need_c`` after haul and wait, unmixed."""
-    loose = MixThermal(case.loose_conductivity_wmk, case.loose_density_kgm3, case.mix_heat_jkgk)
     limit = (need_c - case.air_c) / (load_out_c - case.air_c)
     return float(
         share_below(
-            limit,
-            case.haul_s,
-            _box(case),
-            Faces(*case.moving_wm2k),
-            loose,
-            standing_s=case.wait_s,
-            standing=Faces(*case.standing_wm2k),
+            limit, case.haul_s, _box(case), Faces(*case.moving_wm2k), _loose(case),
+            standing_s=case.wait_s, standing=Faces(*case.standing_wm2k),
         )
-    )
+    )  # fmt: skip
+
+
+def _loose(case: PathCase) -> MixThermal:
+    return MixThermal(case.loose_conductivity_wmk, case.loose_density_kgm3, case.mix_heat_jkgk)
 
 
 def _moments(loaded_at: datetime, haul_s: Floats) -> tuple[datetime, datetime, datetime]:

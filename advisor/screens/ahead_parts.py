@@ -102,6 +102,7 @@ def load_table(load: LoadAhead, zone: ZoneInfo, units: UnitSystem) -> object:
                 (f"Time to roll, {load.rolling_wanted_min:.0f} wanted",
                  _minutes(load.rolling_min)),
                 (f"Colder than {need}, unmixed", f"{load.cold_share:.0%} of the load"),
+                ("Coldest crust", temperature_words(load.crust_c, units)),
             ]
         ),
         _cautions(load.cautions[1:]),

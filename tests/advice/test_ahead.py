@@ -39,6 +39,7 @@ def test_a_hotter_load_waits_longer_and_rolls_longer(demo):
         assert warm.rolling_min.usual > cool.rolling_min.usual
         assert warm.chance >= cool.chance
         assert warm.cold_share <= cool.cold_share
+        assert 10.0 < cool.crust_c < warm.crust_c < warm.delivered_c.low
     first = loads[0]
     assert first.arrives_c.low < first.arrives_c.usual < first.arrives_c.high < 164.0 + 10.0
     assert first.delivered_c.usual < first.arrives_c.usual
