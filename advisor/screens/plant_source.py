@@ -7,7 +7,6 @@ import time
 from collections.abc import Callable, Hashable, Sequence
 from dataclasses import dataclass, replace
 from datetime import datetime, timedelta
-from itertools import pairwise
 from pathlib import Path
 from typing import TypeVar, cast
 from zoneinfo import ZoneInfo
@@ -27,6 +26,7 @@ from advisor.logs import PlantLog, read_logs
 from advisor.records.opening import STORE
 from advisor.review.plant import PlantReview, log_span, review_plant
 from advisor.review.result import Excursion, Review
+from advisor.screens.log_rows import last_before, loads_of_job, value_in, windows_in
 from advisor.screens.source import JobChoice, LaterHour
 from advisor.settings.certificate import Certificate
 from advisor.settings.folder import PlantFolder
@@ -118,7 +118,7 @@ class PlantSource:
             return []
         facts = self._facts
         run = facts.run_at(at)
-        row = _last_before(log.frame, "time", at)
+        row = last_before(log.frame, "time", at)
         found: list[Reading] = []
         if row is not None:
             signals: dict[Point, str | None] = {
@@ -134,19 +134,19 @@ class PlantSource:
                 for point, signal in signals.items()
                 if signal in row.index
             ]
-        loads = _of_job(log, run.fact.job if run else None)
+        loads = loads_of_job(log, run.fact.job if run else None)
         for point, signal, moment in (
             ("load_out", "load_out_c", "time"),
             ("delivery", "delivery_c", "arrived"),
         ):
-            last = _last_before(loads, moment, at)
+            last = last_before(loads, moment, at)
             if last is not None and signal in last.index:
                 found.append(self._reading(cast(Point, point), signal, last, moment))
         return found
 
     def last_reading_at(self, at: datetime) -> datetime | None:
         """When the newest reading known at ``at`` was taken; None where there is none."""
-        row = _last_before(self._log.frame, "time", at) if self._log else None
+        row = last_before(self._log.frame, "time", at) if self._log else None
         return None if row is None else row["time"].to_pydatetime()
 
     def discharge(self, start: datetime, end: datetime) -> Trace:
@@ -165,7 +165,7 @@ class PlantSource:
     def windows_in_force(self, start: datetime, end: datetime) -> Sequence[WindowSpan]:
         """The discharge windows that were in force from ``start`` to ``end``."""
         judged = self._judged(start, end)
-        return [] if judged is None else _windows(judged.rows, start, end)
+        return [] if judged is None else windows_in(judged.rows, start, end)
 
     def excursions_open(self, at: datetime) -> Sequence[Excursion]:
         """The excursions that were still running, or had just ended, at ``at``."""
@@ -211,7 +211,7 @@ class PlantSource:
                 mix=str(row["mix_id"]),
                 truck=str(row.get("truck", "")),
                 mass_kg=float(row["mass_kg"]),
-                load_out_c=_value(row, "load_out_c"),
+                load_out_c=value_in(row, "load_out_c"),
             )
             for _, row in self._log.between(start, end).tickets.iterrows()
         ]
@@ -287,7 +287,7 @@ class PlantSource:
 
     def _reading(self, point: Point, signal: str | None, row: pd.Series, moment: str) -> Reading:
         name = str(signal)
-        value = _value(row, name)
+        value = value_in(row, name)
         sensor = self._folder.plant.sensors.get(name)
         return Reading(
             point=point,
@@ -376,50 +376,3 @@ def _with_target(hour: LaterHour, advice: Advice) -> LaterHour:
         reason = "no safe window" if advice.clash else why_none(advice)
         return replace(hour, change=f"{hour.change}: {reason}" if reason else hour.change)
     return replace(hour, target_c=discharge.target_c)
-
-
-def _last_before(frame: pd.DataFrame, moment: str, at: datetime) -> pd.Series | None:
-    """The row of ``frame`` latest at or before ``at``; None where there is none."""
-    if moment not in frame.columns:
-        return None
-    times = frame[moment]
-    early = frame[(times <= pd.Timestamp(at)).to_numpy()]
-    return None if early.empty else early.loc[early[moment].idxmax()]
-
-
-def _of_job(log: PlantLog, job: str | None) -> pd.DataFrame:
-    """The loads of ``job`` with their arrival, where the exports tell the job."""
-    loads = log.tickets
-    if "job" in loads.columns and job is not None:
-        loads = loads[(loads["job"] == job).to_numpy()]
-    arrivals = log.arrivals.rename(columns={"time": "arrived"})
-    if "ticket" not in loads.columns or "ticket" not in arrivals.columns or arrivals.empty:
-        return loads
-    fresh = [one for one in arrivals.columns if one == "ticket" or one not in loads.columns]
-    return loads.merge(arrivals[fresh], on="ticket", how="left")
-
-
-def _value(row: pd.Series, signal: str) -> float | None:
-    value = row.get(signal)
-    return None if value is None or not np.isfinite(float(value)) else float(value)
-
-
-def _windows(rows: pd.DataFrame, start: datetime, end: datetime) -> list[WindowSpan]:
-    """Stretches of rows under one window, with gaps where nothing was made."""
-    inside = rows[((rows["time"] >= start) & (rows["time"] < end)).to_numpy()]
-    if inside.empty:
-        return []
-    columns = ["discharge_low_c", "discharge_target_c", "discharge_high_c"]
-    made = (inside["rate_kgs"].to_numpy(float) > 0.0)[:, None]
-    numbers = np.where(made, inside[columns].to_numpy(float), np.nan)
-    mixes = inside["mix_id"].fillna("").astype(str).to_numpy()
-    same = (numbers[1:] == numbers[:-1]) | (np.isnan(numbers[1:]) & np.isnan(numbers[:-1]))
-    breaks = np.flatnonzero(~same.all(axis=1) | (mixes[1:] != mixes[:-1])) + 1
-    times = [one.to_pydatetime() for one in inside["time"]]
-    found = []
-    edges = [0, *breaks.tolist(), len(inside)]
-    for first, after in pairwise(edges):
-        until = times[after] if after < len(times) else end
-        low, target, high = (float(one) if np.isfinite(one) else None for one in numbers[first])
-        found.append(WindowSpan(times[first], until, low, target, high, str(mixes[first])))
-    return found
