@@ -13,7 +13,7 @@ from advisor.logs import PlantLog
 
 
 def last_before(frame: pd.DataFrame, moment: str, at: datetime) -> pd.Series | None:
-    """The row of ``frame`` latest at or before ``at`` by its column ``moment``; None without one."""
+    """The row of ``frame`` latest at or before ``at`` by ``moment``; None without one."""
     if moment not in frame.columns:
         return None
     times = frame[moment]
