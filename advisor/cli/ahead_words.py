@@ -57,8 +57,9 @@ def print_load(load: LoadAhead, zone: ZoneInfo, units: UnitSystem) -> None:
         f"- Rolling until {end} (mean of the thickness), {load.rolling_wanted_min:.0f} min wanted."
     )
     click.echo(
-        f"- Not remixed, {load.cold_share:.0%} of the load would be colder than {need}; its coldest "
-        f"crust {shown(load.crust_c, 'temperature', units)}. Weather: {load.weather_from}."
+        f"- Not remixed, {load.cold_share:.0%} of the load would be colder than {need}; its "
+        f"coldest crust {shown(load.crust_c, 'temperature', units)}. "
+        f"Weather: {load.weather_from}."
     )
     doubts = ", ".join(
         f"{one.name} {shown(one.sd_k, 'temperature_delta', units)}"
