@@ -70,7 +70,10 @@ def heat_change(before: Operation, after: Operation) -> HeatChange:
         before: the dryer as it runs
         after: the dryer as it would run; fuel, feed, air and temperatures may all differ
     """
-    first, second = heat_balance(before), heat_balance(after)
+    return _difference(heat_balance(before), heat_balance(after))
+
+
+def _difference(first: HeatBalance, second: HeatBalance) -> HeatChange:
     parts = HeatParts(**{
         one.name: getattr(second.parts, one.name) - getattr(first.parts, one.name)
         for one in fields(HeatParts)
@@ -133,8 +136,9 @@ def overheating_cost(
     """
     excess = np.asarray(excess_k, float)
     base = heat_balance(needed)
+    hotter_c = np.asarray(needed.discharge_c, float) + excess
     changes = [
-        _hotter(needed, excess, rise)
+        _difference(base, heat_balance(at_discharge(needed, hotter_c, rise)))
         for rise in (stack_rise.low, stack_rise.central, stack_rise.high)
     ]
     per_k = [change.gross_j_kg / excess for change in changes]
@@ -154,11 +158,6 @@ def overheating_cost(
         floor_j_kg_k=floor,
         efficiency=Range(floor / gross_k.low, floor / gross_k.central, floor / gross_k.high),
     )
-
-
-def _hotter(needed: Operation, excess: Values, rise: float) -> HeatChange:
-    hotter_c = np.asarray(needed.discharge_c, float) + excess
-    return heat_change(needed, at_discharge(needed, hotter_c, rise))
 
 
 def _solids_j_kg(parts: HeatParts) -> Values:
