@@ -59,7 +59,9 @@ class Intake:
 
 
 def read_export(path: Path, source: LogSource, plant_zone: str) -> Intake:
-    """The export at ``path``, read as ``source`` says; ``plant_zone`` is the plant's time zone.
+    """The export at ``path``, text or Parquet, read as ``source`` says.
+
+    ``plant_zone`` is the plant's time zone.
 
     Raises FaultyInput where the file as a whole cannot be read: missing, empty, no such columns,
     a unit that is stated nowhere or in two ways, a decimal sign that can be read either way.
@@ -74,6 +76,10 @@ def read_export(path: Path, source: LogSource, plant_zone: str) -> Intake:
             "Check its name and that you may read it.",
             file=str(path),
         ) from error
+    if path.suffix == ".parquet":
+        from advisor.logs.parquet import parquet_as_csv  # slow to load, seldom needed
+
+        raw, source = parquet_as_csv(path, source)
     return read_export_bytes(raw, path.name, source, plant_zone)
 
 
