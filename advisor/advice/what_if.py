@@ -16,23 +16,29 @@ from advisor.advice.advise import (
     scatter_k,
 )
 from advisor.advice.burner import stack_rise_of
-from advisor.advice.fuel import fuel_called, kelvin_too_much, money_per_j, operation_of
+from advisor.advice.fuel import fuel_called, money_per_j, operation_of
 from advisor.advice.limits import collect_limits
 from advisor.advice.path import PathDraws, rolling_times_s
 from advisor.advice.result import Advice, PathPoint
 from advisor.advice.situation import Situation
 from advisor.advice.solve import discharge_bounds
+from advisor.advice.wastes import (
+    J_KG_PER_KWH_T,
+    KG_PER_T,
+    Three,
+    doubted,
+    oxidation_of,
+    three,
+    times,
+)
 from advisor.dryer import (
     HeatBalance,
     HeatChange,
     Operation,
-    Range,
     at_discharge,
-    degrees_worth_k,
     fume_growth,
     heat_change,
-    moisture_cost,
-    oxidation_growth,
+    money_per_gross_j,
     with_air_ratio,
     with_fuel,
 )
@@ -40,14 +46,8 @@ from advisor.errors import FaultyInput, MissingInput
 from advisor.sampling import Draws, quantile, share_true
 from advisor.settings.faults import nearest
 from advisor.settings.mixes import Additive
+from advisor.settings.plant import Price
 from advisor.settings.tables import Row, load_table
-
-_J_KG_PER_KWH_T = 3600.0
-_KG_PER_T = 1000.0
-# A balance and a meter agree within this share; common practice, no source. No saving is told
-# surer than that.
-_MODEL_SHARE = 0.10
-_POINT = 0.01  # one percent of moisture
 
 
 @dataclass(frozen=True)
@@ -55,15 +55,18 @@ class Changes:
     """What is done otherwise; None and 0 leave a thing as it is.
 
     ``cooler_k``: discharge set lower [K]; None takes the advised target of the changed plant.
-    ``drier``: water taken off the stone, of dry mass [1], below 0 for wetter; ``air_ratio``: all
-    air over the air just needed [1]; ``rap_share``: of mix [1]; ``additive``: a row of
-    config/modifiers.yaml with an offset; ``haul_s`` [s], ``wind_ms`` [m/s], ``air_c`` [C] and
-    ``lift_m`` [m] in place of what they are.
+    ``drier``: water taken off the stone, of dry mass [1], below 0 for wetter; ``pile``: a row of
+    config/stockpiles.yaml, whose stone is drier by what stands there; ``fuel``: a row of
+    config/fuels.yaml and ``price`` what it costs; ``air_ratio``: all air over the air just needed
+    [1]; ``rap_share``: of mix [1]; ``additive``: a row of config/modifiers.yaml with an offset;
+    ``haul_s`` [s], ``wind_ms`` [m/s], ``air_c`` [C] and ``lift_m`` [m] in place of what they are.
     """
 
     cooler_k: float | None = None
     drier: float = 0.0
+    pile: str | None = None
     fuel: str | None = None
+    price: Price | None = None
     air_ratio: float | None = None
     rap_share: float | None = None
     additive: str | None = None
@@ -80,11 +83,11 @@ class Saved:
     ``money_t`` is None where a price is not known.
     """
 
-    gross_kwh_t: tuple[float, float, float]
-    co2_kg_t: tuple[float, float, float]
-    money_t: tuple[float, float, float] | None
-    gross_kwh_h: tuple[float, float, float]
-    money_h: tuple[float, float, float] | None
+    gross_kwh_t: Three
+    co2_kg_t: Three
+    money_t: Three | None
+    gross_kwh_h: Three
+    money_h: Three | None
     currency: str
 
 
@@ -104,7 +107,7 @@ class Way:
     gross_kwh_t: float
     parts: tuple[tuple[str, float], ...]
     arrives_c: float
-    rolling_min: tuple[float, float, float]
+    rolling_min: Three
     path: tuple[PathPoint, ...]
 
 
@@ -118,18 +121,6 @@ class WhatIf:
     fume_of_before: float
     oxidation_of_before: tuple[float, float]
     notes: tuple[str, ...] = ()
-
-
-@dataclass(frozen=True)
-class DegreeAndWater:
-    """What one kelvin and one percent of moisture cost [kWh/t gross], never to be confused.
-
-    ``percent_in_k`` is how many kelvin too much cost as much as the percent of moisture [K].
-    """
-
-    kelvin_kwh_t: tuple[float, float, float]
-    percent_kwh_t: float
-    percent_in_k: tuple[float, float, float]
 
 
 def what_if(
@@ -171,18 +162,6 @@ def what_if(
     return found
 
 
-def degree_and_water(situation: Situation, discharge_c: float) -> DegreeAndWater:
-    """What a kelvin and a percent of moisture cost at ``discharge_c`` [C], side by side."""
-    kelvin = kelvin_too_much(situation, discharge_c)
-    wetter = moisture_cost(operation_of(situation, discharge_c), -_POINT)
-    worth = degrees_worth_k(wetter, kelvin)
-    return DegreeAndWater(
-        _three(kelvin.gross_j_kg_k, 1.0 / _J_KG_PER_KWH_T),
-        float(wetter.gross_j_kg) / _J_KG_PER_KWH_T,
-        _three(worth, 1.0),
-    )
-
-
 class _Drawn:
     """A situation with its heat path in draws and its advice in brief."""
 
@@ -201,9 +180,9 @@ class _Drawn:
             discharge_c=discharge_c,
             above_low_k=discharge_c - window.low_c if window else None,
             kept=self._kept(discharge_c) if window else None,
-            gross_kwh_t=float(balance.gross_j_kg) / _J_KG_PER_KWH_T,
+            gross_kwh_t=float(balance.gross_j_kg) / J_KG_PER_KWH_T,
             parts=tuple(
-                (name.replace("_", " "), float(part) / _J_KG_PER_KWH_T)
+                (name.replace("_", " "), float(part) / J_KG_PER_KWH_T)
                 for name, part in balance.parts.rows()
             ),
             arrives_c=float(np.median(arriving)),
@@ -262,16 +241,33 @@ def _changed(situation: Situation, changes: Changes) -> Situation:
         # The air is taken to stay as dry as it is: its dew point moves along.
         dew_c = weather.dew_point_c + changes.air_c - weather.air_c
         weather = replace(weather, air_c=changes.air_c, dew_point_c=dew_c)
-    moisture = situation.moisture - changes.drier
+    off = changes.drier + (_pile(changes.pile)["drier"] if changes.pile is not None else 0.0)
+    moisture = situation.moisture - off
     if moisture < 0.0:
         raise FaultyInput.of(
             "drier-than-dry",
-            f"The stone holds {situation.moisture:.1%} of water; "
-            f"{changes.drier:.1%} cannot be taken off.",
+            f"The stone holds {situation.moisture:.1%} of water; {off:.1%} cannot be taken off.",
             f"Give at most {100.0 * situation.moisture:.1f} %.",
             field="drier",
         )
     return replace(situation, mix=mix, job=job, weather=weather, moisture=moisture)
+
+
+def piles() -> tuple[str, ...]:
+    """Names of the ways to keep a stockpile drier."""
+    return tuple(str(row["name"]) for row in load_table("stockpiles").rows)
+
+
+def _pile(name: str) -> Row:
+    if name not in piles():
+        raise FaultyInput.of(
+            "unknown-pile",
+            f"'{name}' is no way to keep a stockpile that is known here.",
+            nearest(name, piles()),
+            field="pile",
+            value=name,
+        )
+    return load_table("stockpiles").row(name)
 
 
 def additives() -> tuple[str, ...]:
@@ -314,28 +310,18 @@ def _compared(
         heat_change(base, at_discharge(other, to_c, one))
         for one in (rise.low, rise.central, rise.high)
     ]
-    spent = sorted(float(one.gross_j_kg) for one in moved)
-    central = float(moved[1].gross_j_kg)
-    doubt = _MODEL_SHARE * abs(central)
-    low = central - float(np.hypot(central - spent[0], doubt))
-    high = central + float(np.hypot(spent[2] - central, doubt))
-    saved_j_kg = Range(np.asarray(-high), np.asarray(-central), np.asarray(-low))
-    notes = []
-    energies = load_table("overheating").row("oxidation of binder")
-    oxidation = sorted(
-        float(oxidation_growth(to_c, from_c, energies[side])) for side in ("low", "high")
-    )
-    if changes.fuel is not None:
-        notes.append(f"The price of {changes.fuel} is not known here: no money is told.")
+    least, central, most = sorted(-float(one.gross_j_kg) for one in moved)
+    saved = doubted(central, central - least, most - central)
+    notes = _notes(changes)
     clash = after.advice.clash
     if clash:
         notes.append(f"No safe window: {clash.lower.name} clashes with {clash.upper.name}.")
     return WhatIf(
         before=before.way(from_c, moved[1].before),
         after=after.way(to_c, moved[1].after),
-        saved=_saved(before.situation, saved_j_kg, moved[1], priced=changes.fuel is None),
+        saved=_saved(before.situation, three(saved, 1.0), moved[1], changes),
         fume_of_before=float(fume_growth(to_c, from_c)),
-        oxidation_of_before=(oxidation[0], oxidation[1]),
+        oxidation_of_before=oxidation_of(to_c, from_c),
         notes=tuple(notes),
     )
 
@@ -348,21 +334,52 @@ def _other_dryer(operation: Operation, changes: Changes) -> Operation:
     return operation
 
 
-def _saved(situation: Situation, saved_j_kg: Range, change: HeatChange, *, priced: bool) -> Saved:
-    money = money_per_j(situation.facts.folder.plant.dryer) if priced else None
-    per_h = situation.rate_kgs * 3600.0 / _KG_PER_T
-    kwh_t = _three(saved_j_kg, 1.0 / _J_KG_PER_KWH_T)
-    co2_share = float(change.co2_kg_kg) / float(change.gross_j_kg) if change.gross_j_kg else 0.0
-    money_t = _three(saved_j_kg, _KG_PER_T * money) if money is not None else None
+def _notes(changes: Changes) -> list[str]:
+    """What to know of a change before its numbers are believed."""
+    notes = []
+    if changes.pile is not None:
+        row = _pile(changes.pile)
+        origin = row.origin("drier")
+        notes.append(
+            f"All stone is taken to be {row['drier']:.1%} drier from a {changes.pile} pile: "
+            f"{origin.source} ({origin.how_known})."
+        )
+    if changes.fuel is not None and changes.price is None:
+        notes.append(f"The price of {changes.fuel} is not known here: no money is told.")
+    if changes.air_ratio is not None:
+        notes.append(
+            "Air that leaks in behind the dryer costs the fan, not the fuel: for that part nothing "
+            "is saved."
+        )
+    return notes
+
+
+def _saved(situation: Situation, saved_j_kg: Three, change: HeatChange, changes: Changes) -> Saved:
+    dryer = situation.facts.folder.plant.dryer
+    fuel = changes.fuel or dryer.fuel.name
+    price = money_per_j(dryer)
+    then = price if changes.fuel is None else None
+    if changes.price is not None:
+        then = money_per_gross_j(fuel_called(fuel), changes.price.amount, changes.price.per)
+    before_j_kg = float(change.before.gross_j_kg)
+    co2_now = float(change.before.co2_kg_kg) / before_j_kg
+    co2_then = float(change.after.co2_kg_kg) / float(change.after.gross_j_kg)
+
+    def worth_t(now: float, later: float) -> Three:
+        """What is saved per tonne where a joule is worth ``now``, and ``later`` on."""
+        low, central, high = (
+            KG_PER_T * (now * before_j_kg - later * (before_j_kg - one)) for one in saved_j_kg
+        )
+        return low, central, high
+
+    per_h = situation.rate_kgs * 3600.0 / KG_PER_T
+    kwh_t = times(saved_j_kg, 1.0 / J_KG_PER_KWH_T)
+    money_t = worth_t(price, then) if price is not None and then is not None else None
     return Saved(
         gross_kwh_t=kwh_t,
-        co2_kg_t=_three(saved_j_kg, _KG_PER_T * co2_share),
+        co2_kg_t=worth_t(co2_now, co2_then),
         money_t=money_t,
-        gross_kwh_h=(kwh_t[0] * per_h, kwh_t[1] * per_h, kwh_t[2] * per_h),
-        money_h=(money_t[0] * per_h, money_t[1] * per_h, money_t[2] * per_h) if money_t else None,
+        gross_kwh_h=times(kwh_t, per_h),
+        money_h=times(money_t, per_h) if money_t else None,
         currency=situation.facts.folder.plant.currency,
     )
-
-
-def _three(span: Range, factor: float) -> tuple[float, float, float]:
-    return float(span.low) * factor, float(span.central) * factor, float(span.high) * factor

@@ -11,7 +11,9 @@ import click
 from advisor.cli.asked import Asked, json_option, plant_argument, us_option
 
 if TYPE_CHECKING:
-    from advisor.advice.what_if import Changes, DegreeAndWater, WhatIf
+    from advisor.advice.wastes import Wastes
+    from advisor.advice.what_if import Changes, WhatIf
+    from advisor.settings.plant import Price
     from advisor.units import UnitSystem
 
 
@@ -32,7 +34,14 @@ if TYPE_CHECKING:
     metavar="SHARE",
     help="Water off the stone, of dry mass: '1 %'.",
 )
+@click.option("--pile", metavar="NAME", help="Stone from a pile kept another way: paved, covered.")
 @click.option("--fuel", metavar="NAME", help="Another fuel of config/fuels.yaml.")
+@click.option(
+    "--price",
+    nargs=2,
+    metavar="AMOUNT UNIT",
+    help="What fuel costs then, as it is billed: 0.85 L, 0.04 'kWh gross'.",
+)
 @click.option("--air-ratio", type=float, help="All air over the air needed: 1.6.")
 @click.option(
     "--rap-share", type=Asked("fraction"), metavar="SHARE", help="RAP in the mix: '30 %'."
@@ -46,7 +55,9 @@ def what_if(
     job: str | None,
     cooler: float | None,
     drier: float,
+    pile: str | None,
     fuel: str | None,
+    price: tuple[str, str] | None,
     air_ratio: float | None,
     rap_share: float | None,
     additive: str | None,
@@ -63,17 +74,21 @@ def what_if(
       advisor what-if demo_plant
       advisor what-if demo_plant --job J01 --additive surfactant
       advisor what-if demo_plant --cooler "10 C" --drier "1 %"
+      advisor what-if demo_plant --fuel "distillate oil" --price 0.85 L
     """
     from advisor.advice.open_plant import moment_now, open_plant
     from advisor.advice.situation import gather_situation
-    from advisor.advice.what_if import Changes, degree_and_water
+    from advisor.advice.wastes import wastes_at
+    from advisor.advice.what_if import Changes
     from advisor.advice.what_if import what_if as compared
     from advisor.cli.output import print_json
 
     asked = Changes(
         cooler_k=cooler,
         drier=drier,
+        pile=pile,
         fuel=fuel,
+        price=_price(price),
         air_ratio=air_ratio,
         rap_share=rap_share,
         additive=additive,
@@ -87,29 +102,51 @@ def what_if(
         usual = _usual(float(facts.folder.plant.dryer.air_ratio))
         wanted = [asked] if asked != Changes() else usual
         found = compared(situation, wanted)
-        costs = degree_and_water(situation, found[0].before.discharge_c)
+        costs = wastes_at(situation, found[0].before.discharge_c)
     if as_json:
-        print_json({"ways": found, "changes": wanted, "degree_and_water": costs})
+        print_json({"ways": found, "changes": wanted, "wastes": costs})
         return
     _print(wanted, found, costs, units)
 
 
+def _price(written: tuple[str, str] | None) -> Price | None:
+    """The price an option says; refuses what is none."""
+    from pydantic import ValidationError
+
+    from advisor.errors import FaultyInput
+    from advisor.settings.plant import Price
+
+    if written is None:
+        return None
+    amount, per = written
+    try:
+        return Price.model_validate({"amount": float(amount), "per": per})
+    except (ValidationError, ValueError):
+        raise FaultyInput.of(
+            "no-price",
+            f"'{amount} {per}' is no price of fuel.",
+            "Give a number above 0 and the unit it is billed in: kWh gross, kWh net, MMBtu gross, "
+            "therm, m3, L, gal, kg, t or ton.",
+            field="price",
+            value=f"{amount} {per}",
+        ) from None
+
+
 def _usual(air_ratio: float) -> list[Changes]:
     """The ways a plant can save that are most often asked about."""
-    from advisor.advice.what_if import Changes, additives
+    from advisor.advice.what_if import Changes, additives, piles
 
     return [
         Changes(cooler_k=5.0),
         Changes(cooler_k=10.0),
         Changes(cooler_k=0.0, drier=0.01),
+        *(Changes(cooler_k=0.0, pile=name) for name in piles()),
         Changes(cooler_k=0.0, air_ratio=max(air_ratio - 0.3, 1.0)),
         *(Changes(additive=name) for name in additives()),
     ]
 
 
-def _print(
-    wanted: list[Changes], found: list[WhatIf], costs: DegreeAndWater, units: UnitSystem
-) -> None:
+def _print(wanted: list[Changes], found: list[WhatIf], costs: Wastes, units: UnitSystem) -> None:
     from advisor.cli.output import print_table
     from advisor.units import shown
 
@@ -121,7 +158,16 @@ def _print(
         f"{_heat(before.gross_kwh_t, units)} gross, {_share(before.kept)} of the mix above low.\n"
     )
     print_table(
-        ("what if", "discharge", "above low", "mix above low", "saves", "money saved", "fume"),
+        (
+            "what if",
+            "discharge",
+            "above low",
+            "mix above low",
+            "saves",
+            "money saved",
+            "fume",
+            "oxidation",
+        ),
         [
             (
                 _words(one, units),
@@ -131,26 +177,68 @@ def _print(
                 _heat_span(each.saved.gross_kwh_t, units),
                 _money_span(each),
                 f"{each.fume_of_before - 1.0:+.0%}",
+                _growth(each.oxidation_of_before),
             )
             for one, each in zip(wanted, found, strict=True)
         ],
     )
+    notes: dict[str, None] = {}
     for each in found:
         for note in each.notes:
-            click.echo(f"  {note}")
-    # One degree is smaller where it is one of Fahrenheit.
-    low, middle, high = (one / (1.8 if units == "us" else 1.0) for one in costs.kelvin_kwh_t)
+            notes.setdefault(note)
+    for note in notes:
+        click.echo(f"  {note}")
+    click.echo("")
+    _print_wastes(costs, units)
+    click.echo(
+        "\nSavings are worked out from two heat balances and how far the stack follows the mix; "
+        "none is told surer than 10 %. A mix below low may not coat or arrive: the site and the "
+        "mix design decide. Fume by AP-42 section 11.1 (from memory); oxidation by activation "
+        "energies measured below 100 C."
+    )
+
+
+def _print_wastes(costs: Wastes, units: UnitSystem) -> None:
+    from advisor.cli.output import print_table
+    from advisor.units import shown
+
+    rows = []
+    for one in costs.each():
+        # One degree is smaller where it is one of Fahrenheit.
+        by = 1.0 / 1.8 if units == "us" and one is costs.overheating else 1.0
+        heat, money = _times(one.gross_kwh_t, by), one.money_h and _times(one.money_h, by)
+        rows.append(
+            (
+                one.name,
+                one.unit.replace("Celsius", "Fahrenheit") if units == "us" else one.unit,
+                _heat_span(heat, units),
+                _heat(heat[1], units),
+                f"{money[0]:.1f} to {money[2]:.1f} {costs.currency}/h" if money else "",
+                _mass_span(_times(one.co2_kg_t, by), units),
+            )
+        )
+    print_table(("what costs", "for", "fuel", "most likely", "money", "CO2"), rows)
     least, _, most = (shown(one, "temperature_delta", units, 0) for one in costs.percent_in_k)
+    slow, fast = costs.oxidation_of_kelvin
+    kelvin = shown(1.0, "temperature_delta", units, 1 if units == "us" else 0)
     click.echo(
-        f"\nOne degree of overheating costs {_heat_span((low, middle, high), units)} "
-        f"({_heat(middle, units)} most likely); one percent of moisture "
-        f"{_heat(costs.percent_kwh_t, units)}, as much as {least} to {most} too much."
+        f"\nOne percent of moisture costs as much fuel as {least} to {most} too much, but only "
+        f"heat makes fume and ages the binder: {kelvin} more "
+        f"gives {costs.fume_of_kelvin - 1.0:+.0%} fume and "
+        f"{slow - 1.0:+.0%} to {fast - 1.0:+.0%} oxidation."
     )
-    click.echo(
-        "\nWorked out from two heat balances and how far the stack follows the mix; no saving is "
-        "told surer than 10 %. A mix below low may not coat or arrive: the site and the mix design "
-        "decide. Fume by AP-42 section 11.1 (from memory)."
-    )
+    for one in costs.each():
+        click.echo(f"  {one.name}: from {one.found_from}; {one.how_sure}.")
+
+
+def _times(told: tuple[float, float, float], factor: float) -> tuple[float, float, float]:
+    return told[0] * factor, told[1] * factor, told[2] * factor
+
+
+def _mass_span(kg_t: tuple[float, float, float], units: UnitSystem) -> str:
+    if units == "us":
+        return f"{2.0 * kg_t[0]:.2f} to {2.0 * kg_t[2]:.2f} lb/ton"
+    return f"{kg_t[0]:.2f} to {kg_t[2]:.2f} kg/t"
 
 
 def _heat(kwh_t: float, units: UnitSystem) -> str:
@@ -176,6 +264,11 @@ def _margin(each: WhatIf, units: UnitSystem) -> str:
     return "" if margin is None else shown(margin, "temperature_delta", units)
 
 
+def _growth(span: tuple[float, float]) -> str:
+    low, high = (f"{one - 1.0:+.0%}" for one in span)
+    return low if low == high else f"{low} to {high}"
+
+
 def _share(share: float | None) -> str:
     return "no window" if share is None else f"{share:.0%}"
 
@@ -188,6 +281,8 @@ def _words(one: Changes, units: UnitSystem) -> str:
         told.append(f"{shown(one.cooler_k, 'temperature_delta', units, 0)} cooler")
     if one.drier:
         told.append(f"stone {abs(one.drier):.1%} {'drier' if one.drier > 0 else 'wetter'}")
+    if one.pile:
+        told.append(f"{one.pile} pile")
     if one.fuel:
         told.append(one.fuel)
     if one.air_ratio is not None:

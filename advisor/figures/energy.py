@@ -29,7 +29,11 @@ Parts = Sequence[tuple[str, float]]
 
 
 def energy_bars(
-    before: Parts, after: Parts | None, units: UnitSystem = "si", ink: Ink = LIGHT
+    before: Parts,
+    after: Parts | None,
+    units: UnitSystem = "si",
+    ink: Ink = LIGHT,
+    narrow: bool = False,
 ) -> go.Figure:
     """Figure of gross heat by where it goes, a bar as it runs and a line where it would end.
 
@@ -38,6 +42,7 @@ def energy_bars(
     before, after : name and heat [kWh/t] of each part; ``after`` is None where nothing changes
     units : 'si' or 'us'
     ink : palette
+    narrow : whether it has to fit a phone
     """
     figure = bare(ink, _MARGIN)
     now = shown_parts(before)
@@ -80,7 +85,11 @@ def energy_bars(
         )
     longest = max(*values, *(_number(one, units) for one in (then or {"": 0.0}).values()))
     figure.update_xaxes(
-        range=[min(0.0, *values), longest * 1.02], showgrid=True, ticksuffix=f" {unit}", nticks=4
+        range=[min(0.0, *values), longest * 1.02],
+        showgrid=True,
+        ticksuffix=f" {unit}",
+        tickangle=0,
+        nticks=2 if narrow else 4,
     )
     figure.update_yaxes(range=[len(now) - 0.5, -0.5], visible=False)
     return figure

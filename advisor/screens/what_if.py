@@ -7,7 +7,8 @@ from typing import Any
 
 from dash import Dash, Input, Output, State, dcc, html
 
-from advisor.advice.what_if import Changes, additives, degree_and_water
+from advisor.advice.wastes import wastes_at
+from advisor.advice.what_if import Changes, additives
 from advisor.advice.what_if import what_if as compared
 from advisor.errors import AdvisorError
 from advisor.figures.base import STILL, blank
@@ -73,7 +74,10 @@ def layout(source: Source, search: str | None) -> Any:
                         className="sheet numbers",
                     ),
                     html.Section(
-                        [html.H2("Degrees and water"), html.Div(id=id_of(PAGE, "costs"))],
+                        [
+                            html.H2("What a degree, water and air cost"),
+                            html.Div(id=id_of(PAGE, "costs")),
+                        ],
                         className="sheet costs",
                     ),
                 ],
@@ -223,12 +227,12 @@ def _shown(
     after = replace(found.after.advice, path=found.after.path)
     return {
         "heading": parts.heading(found, changed, units),
-        "table": parts.numbers(found, units),
-        "costs": parts.costs(degree_and_water(situation, found.before.discharge_c), units),
+        "table": parts.numbers(found, changed, units),
+        "costs": parts.costs(wastes_at(situation, found.before.discharge_c), units),
         "path": heat_path(after, (), units, ink, narrow),
         "path-words": heat_path_words(after, (), units),
         "energy": energy_bars(
-            found.before.parts, found.after.parts if changed else None, units, ink
+            found.before.parts, found.after.parts if changed else None, units, ink, narrow
         ),
         "energy-words": energy_words(
             found.before.parts, found.after.parts if changed else None, units

@@ -9,7 +9,8 @@ from typing import Any
 from dash import html
 
 from advisor.advice.situation import Situation
-from advisor.advice.what_if import Changes, DegreeAndWater, WhatIf
+from advisor.advice.wastes import Wastes
+from advisor.advice.what_if import Changes, WhatIf
 from advisor.screens.words import temperature_words
 from advisor.units import UnitSystem, from_si, shown, shown_number, shown_unit, to_si
 
@@ -108,7 +109,7 @@ def heading(found: WhatIf, changed: bool, units: UnitSystem) -> Any:
     if not changed:
         words = (
             f"{advice.mix}, {advice.job_name}: {temperature_words(found.before.discharge_c, units)}"
-            f" at discharge takes {_heat(found.before.gross_kwh_t, units)}. Move a slider."
+            f" at discharge takes {_heat(found.before.gross_kwh_t, units, 1)}. Move a slider."
         )
         return html.H1(words)
     low, _, high = found.saved.gross_kwh_t
@@ -145,8 +146,8 @@ def _margin_class(found: WhatIf) -> str:
     return "refusal" if below else ""
 
 
-def numbers(found: WhatIf, units: UnitSystem) -> Any:
-    """Now and then, line by line."""
+def numbers(found: WhatIf, changed: bool, units: UnitSystem) -> Any:
+    """Now and then, line by line; nothing under then while nothing is ``changed``."""
     before, after, saved = found.before, found.after, found.saved
 
     def window(way: Any) -> str:
@@ -172,8 +173,8 @@ def numbers(found: WhatIf, units: UnitSystem) -> Any:
             temperature_words(after.arrives_c, units),
         ),
         ("Time to roll", rolling(before), rolling(after)),
-        ("Fuel, gross", _heat(before.gross_kwh_t, units), _heat(after.gross_kwh_t, units)),
-        ("CO2 saved", "", f"{_span(saved.co2_kg_t, 1)} kg/t"),
+        ("Fuel, gross", _heat(before.gross_kwh_t, units, 1), _heat(after.gross_kwh_t, units, 1)),
+        ("CO2 saved", "", _carbon(saved.co2_kg_t, units)),
         ("Fume at load-out", "", f"{found.fume_of_before - 1.0:+.0%}"),
         ("Binder oxidises", "", f"{slow} to {fast}"),
     ]
@@ -195,7 +196,7 @@ def numbers(found: WhatIf, units: UnitSystem) -> Any:
                             [
                                 html.Th(name, scope="row"),
                                 html.Td(now, className="number"),
-                                html.Td(then, className="number"),
+                                html.Td(then if changed else "", className="number"),
                             ]
                         )
                         for name, now, then in rows
@@ -212,21 +213,43 @@ def numbers(found: WhatIf, units: UnitSystem) -> Any:
     ]
 
 
-def costs(found: DegreeAndWater, units: UnitSystem) -> Any:
-    """What a degree and what a percent of water cost, side by side."""
-    degree = 1.8 if units == "us" else 1.0
-    low, _, high = (one / degree for one in found.kelvin_kwh_t)
+def costs(found: Wastes, units: UnitSystem) -> Any:
+    """What a degree, a percent of water and a tenth of air cost, each on its line."""
+    rows = []
+    for one in found.each():
+        by = 1.0 / 1.8 if units == "us" and one is found.overheating else 1.0
+        low, _, high = (value * by for value in one.gross_kwh_t)
+        money = ""
+        if one.money_h:
+            money = f"{one.money_h[0] * by:.1f} to {one.money_h[2] * by:.1f} {found.currency}/h"
+        unit = one.unit.replace("Celsius", "Fahrenheit") if units == "us" else one.unit
+        rows.append(
+            html.Tr(
+                [
+                    html.Th(f"{one.name}: {unit}", scope="row"),
+                    html.Td(f"{_bare(low, units)} to {_heat(high, units)}", className="number"),
+                    html.Td(money, className="number"),
+                ]
+            )
+        )
     least, most = (
         shown(found.percent_in_k[place], "temperature_delta", units, 0) for place in (0, 2)
     )
-    return html.P(
-        f"One degree too much costs {_bare(low, units)} to {_heat(high, units)}; one percent of "
-        f"moisture {_heat(found.percent_kwh_t, units)}, as much as {least} to {most} too much."
-    )
+    return [
+        html.Table(html.Tbody(rows)),
+        html.P(
+            f"A percent of moisture takes as much fuel as {least} to {most} too much; only heat "
+            "makes fume and ages the binder.",
+        ),
+        *(
+            html.P(f"{one.name}: from {one.found_from}; {one.how_sure}.", className="note")
+            for one in found.each()
+        ),
+    ]
 
 
-def _heat(kwh_t: float, units: UnitSystem) -> str:
-    return shown(kwh_t * _J_KG_PER_KWH_T, "heat_per_mass", units, 0 if units == "us" else 2)
+def _heat(kwh_t: float, units: UnitSystem, places: int = 2) -> str:
+    return shown(kwh_t * _J_KG_PER_KWH_T, "heat_per_mass", units, 0 if units == "us" else places)
 
 
 def _bare(kwh_t: float, units: UnitSystem) -> str:
@@ -234,5 +257,6 @@ def _bare(kwh_t: float, units: UnitSystem) -> str:
     return f"{number:.0f}" if units == "us" else f"{number:.2f}"
 
 
-def _span(three: tuple[float, float, float], decimals: int) -> str:
-    return f"{three[0]:.{decimals}f} to {three[2]:.{decimals}f}"
+def _carbon(kg_t: tuple[float, float, float], units: UnitSystem) -> str:
+    by, unit = (2.0, "lb/ton") if units == "us" else (1.0, "kg/t")
+    return f"{kg_t[0] * by:.1f} to {kg_t[2] * by:.1f} {unit}"

@@ -36,7 +36,7 @@ def test_cooler_saves_fuel_and_costs_margin(ask):
     assert 0 < low < central < high
     assert central == pytest.approx(before["gross_kwh_t"] - after["gross_kwh_t"], rel=1e-9)
     # ten times what a degree costs by the stack's usual answer
-    assert central == pytest.approx(10 * found["degree_and_water"]["kelvin_kwh_t"][1], rel=0.02)
+    assert central == pytest.approx(10 * found["wastes"]["overheating"]["gross_kwh_t"][1], rel=0.02)
     assert way["fume_of_before"] < 1.0
     parts = dict(after["parts"])
     assert sum(parts.values()) == pytest.approx(after["gross_kwh_t"], rel=1e-9)
@@ -65,6 +65,47 @@ def test_another_fuel_is_not_priced_and_says_so(ask):
     assert way["saved"]["co2_kg_t"][1] < 0 < way["saved"]["gross_kwh_t"][1]
 
 
+def test_another_fuel_at_its_price_is_money_on_every_tonne(ask):
+    (way,) = ways(ask("--fuel", "distillate oil", "--price", "0.85", "L", "--json"))["ways"]
+    before, after, money = way["before"], way["after"], way["saved"]["money_t"]
+    # 0.041 a kWh gross of gas; a litre of distillate oil holds 38.6 MJ, 10.72 kWh
+    spent = before["gross_kwh_t"] * 0.041 - after["gross_kwh_t"] * 0.85 / 10.72
+    assert money[1] == pytest.approx(spent, rel=2e-3)
+    assert money[0] < money[1] < money[2] < 0
+
+
+def test_another_price_alone_is_worth_the_difference(ask):
+    (way,) = ways(ask("--price", "0.03", "kWh gross", "--json"))["ways"]
+    assert way["saved"]["gross_kwh_t"] == [0.0, 0.0, 0.0]
+    assert way["saved"]["money_t"][1] == pytest.approx(0.011 * way["before"]["gross_kwh_t"])
+
+
+def test_a_pile_is_as_dry_as_its_table_says_and_whose_word_that_is(ask):
+    (pile,) = ways(ask("--pile", "paved", "--json"))["ways"]
+    (drier,) = ways(ask("--drier", "0.6 %", "--json"))["ways"]
+    assert pile["saved"] == drier["saved"]
+    assert any("looked up" in note for note in pile["notes"])
+
+
+def test_each_waste_says_from_what_and_how_sure_and_none_is_another(ask):
+    found = ways(ask("--json"))["wastes"]
+    three = [found[name] for name in ("overheating", "moisture", "leaking_air")]
+    for one in three:
+        low, central, high = one["gross_kwh_t"]
+        assert low < central < high
+        assert one["gross_kwh_h"][1] == pytest.approx(180.0 * central)
+        assert one["money_t"][1] == pytest.approx(0.041 * central)
+        # 53 to 56 kg a GJ net: a little below 0.2 kg a kWh gross of gas
+        assert 0.17 < one["co2_kg_t"][1] / central < 0.19
+        assert one["found_from"] and one["how_sure"]
+    assert len({one["how_sure"] for one in three}) == 3
+    # what leaks in behind the dryer takes no fuel
+    assert found["leaking_air"]["gross_kwh_t"][0] == 0.0
+    heat, water = (found[name]["gross_kwh_t"] for name in ("overheating", "moisture"))
+    assert found["percent_in_k"][1] == pytest.approx(water[1] / heat[1])
+    assert found["fume_of_kelvin"] > 1.0 and found["oxidation_of_kelvin"][0] > 1.0
+
+
 def test_several_changes_are_done_together(ask):
     (both,) = ways(ask("--cooler", "5 C", "--drier", "1 %", "--json"))["ways"]
     (cool,) = ways(ask("--cooler", "5 C", "--json"))["ways"]
@@ -77,11 +118,24 @@ def test_several_changes_are_done_together(ask):
 def test_with_nothing_named_the_usual_ways_are_a_table(ask):
     code, out, _ = ask()
     assert code == 0
-    for words in ("10 °C cooler", "stone 1.0% drier", "air ratio", "surfactant", "foam"):
+    for words in (
+        "10 °C cooler",
+        "stone 1.0% drier",
+        "air ratio",
+        "surfactant",
+        "foam",
+        "covered pile",
+    ):
         assert words in out
-    assert "One degree of overheating costs" in out and "one percent of moisture" in out
+    for words in ("overheating", "one degree Celsius too hot", "one percent of the dry stone"):
+        assert words in out
     _, us, _ = ask("--us")
-    assert "18 °F cooler" in us and "Btu/ton" in us and "kWh" not in us
+    assert (
+        "18 °F cooler" in us
+        and "one degree Fahrenheit too hot" in us
+        and "Btu/ton" in us
+        and "kWh" not in us
+    )
 
 
 @pytest.mark.parametrize(
@@ -92,6 +146,9 @@ def test_with_nothing_named_the_usual_ways_are_a_table(ask):
         (["--drier", "9 %"], ["drier", "4.5 %"]),
         (["--fuel", "coal"], ["coal", "natural gas"]),
         (["--additive", "fom"], ["fom", "Did you mean 'foam'"]),
+        (["--pile", "roofed"], ["roofed", "covered"]),
+        (["--price", "0", "L"], ["0 L", "kWh gross"]),
+        (["--price", "1", "bucket"], ["bucket", "kWh gross"]),
         (["--air-ratio", "0.5"], ["air_ratio", "0.5"]),
         (["--rap-share", "20 %"], ["AC14", "no RAP"]),
         (["--job", "J09"], ["J09"]),
