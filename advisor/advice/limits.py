@@ -12,6 +12,7 @@ from advisor.advice.content import BinderState
 from advisor.advice.path import PathDraws
 from advisor.advice.result import Limit, Point, Side
 from advisor.advice.solve import Coating
+from advisor.settings.binders import kinds_in
 from advisor.settings.folder import PlantFolder
 from advisor.settings.limits import PublishedLimit, published_limits
 from advisor.settings.mixes import Job, Mix
@@ -107,11 +108,14 @@ def _coating(mix: Mix, binder: BinderState) -> Coating | None:
         return None
     named = "supplier's mixing range" if binder.modified else f"viscosity {window.method}"
     lowering, doubt = 0.0, 0.0
-    if mix.additive:
-        least, most = mix.additive.offset_low, mix.additive.offset_high
+    additive = mix.additive
+    if additive and additive.kind in kinds_in(binder.certificates):
+        additive = None  # the binder brings it already: its window is lowered once
+    if additive:
+        least, most = additive.offset_low, additive.offset_high
         lowering, doubt = 0.5 * (least + most), (most - least) / 12.0**0.5
-        named += f", {mix.additive.kind} lowers it by {least.text} to {most.text}"
-    source = window.source + (f"; {mix.additive.source}" if mix.additive else "")
+        named += f", {additive.kind} lowers it by {least.text} to {most.text}"
+    source = window.source + (f"; {additive.source}" if additive else "")
 
     def edge(side: Side, value: object, sd: object, beyond: str) -> Limit:
         return Limit(

@@ -148,6 +148,11 @@ def _added(certificates: Sequence[Certificate]) -> list[Modifier]:
     return [modifier_named(name) for name in dict.fromkeys(names)]
 
 
+def kinds_in(certificates: Sequence[Certificate]) -> frozenset[str]:
+    """Kinds of what is in a binder or added to it, such as 'surfactant', by its certificates."""
+    return frozenset(one.kind for one in _added(certificates))
+
+
 def supplier_range(certificates: Sequence[Certificate], purpose: str = "mixing") -> Window | None:
     """What all suppliers' ranges for ``purpose`` allow together; None where none is stated."""
     ranges = [(one, getattr(one.supplier, purpose)) for one in certificates]

@@ -8,6 +8,7 @@ import pytest
 
 from advisor.advice.advise import advise, advise_all
 from advisor.advice.ledger import tank_content
+from advisor.advice.open_plant import open_plant
 from advisor.advice.result import AUTHORITIES
 from advisor.advice.situation import gather_situation
 from advisor.advice.timeline import build_timeline, timeline_frame
@@ -166,3 +167,27 @@ def test_the_timeline_has_a_row_for_every_change(demo):
     frame = timeline_frame(rows)
     assert frame["start"].is_monotonic_increasing
     assert (frame["discharge_low_c"] <= frame["discharge_high_c"]).all()
+
+
+def test_an_additive_in_the_binder_and_on_the_mix_lowers_the_window_once(own_demo):
+    def low_c():
+        with open_plant(own_demo).records as records:
+            facts = replace(open_plant(own_demo), records=records)
+            advice = advise(gather_situation(facts, SHOWN_AT, "J05"))
+            (edge,) = [
+                one for one in advice.limits if one.side == "low" and one.name.startswith("coating")
+            ]
+            return edge.value_c
+
+    by_mix = low_c()
+    path = own_demo / "records" / "certificates.yaml"
+    text = path.read_text("utf-8")
+    path.write_text(text.replace("modifier: none", "modifier: none\n      additives: [surfactant]"))
+    both = low_c()
+    mixes = own_demo / "mixes.yaml"
+    lines = mixes.read_text("utf-8").splitlines(keepends=True)
+    start = next(i for i, line in enumerate(lines) if line.startswith("    additive:"))
+    del lines[start : start + 5]
+    mixes.write_text("".join(lines), "utf-8")
+    assert both == pytest.approx(low_c())  # as the binder has it, the mix adds nothing
+    assert both > by_mix  # 5 to 12 K of the table instead of the supplier's 15 to 25
