@@ -130,7 +130,7 @@ def _in_full(
     delivery = advice.setpoint("delivery")
     assert discharge and delivery  # noqa: S101 - a solution always has both
     arriving = path.legs["delivery"].at_point(discharge.target_c)
-    rolling = rolling_times_s(path, arriving, CRITERION) / 60.0
+    rolling = rolling_times_s(path, arriving, CRITERION, DRAW_COUNT) / 60.0
     needed = found.lows[0].draws_c
     inputs = {DRAWN[name]: values for name, values in path.inputs.items()}
     shares = contributions_sd(needed, inputs)

@@ -28,7 +28,7 @@ from advisor.heat import (
     rolling_time_s,
     transfer_drop_k,
 )
-from advisor.heat.mat import Criterion
+from advisor.heat.mat import Criterion, some_cases
 from advisor.sampling import Draws
 
 Floats = NDArray[np.float64]
@@ -241,10 +241,17 @@ def draw_path(cases: Sequence[PathCase], draws: Draws, criterion: Criterion) -> 
     ]
 
 
-def rolling_times_s(path: PathDraws, delivery_c: Floats, criterion: Criterion) -> Floats:
-    """Rolling time [s] of every draw for loads that arrive at ``delivery_c`` (count,) [C]."""
-    laid = delivery_c - path.paving_loss_k
-    return rolling_time_s(path.mat, laid, path.rolling_end_c, criterion=criterion)
+def rolling_times_s(
+    path: PathDraws, delivery_c: Floats, criterion: Criterion, most: int | None = None
+) -> Floats:
+    """Rolling time [s] of every draw for loads that arrive at ``delivery_c`` (count,) [C].
+
+    ``most`` takes no more than so many of the draws: a band needs fewer than a bound.
+    """
+    few = slice(most)
+    laid = (delivery_c - path.paving_loss_k)[few]
+    mat = some_cases(path.mat, delivery_c.shape, few)
+    return rolling_time_s(mat, laid, path.rolling_end_c[few], criterion=criterion)
 
 
 def _kept_by_wait(case: PathCase, waits_s: Floats) -> Floats:
