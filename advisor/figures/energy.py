@@ -61,28 +61,38 @@ def energy_bars(
         marker={"color": ink.window, "line": {"width": 0}},
         hovertemplate=f"now %{{x:.1f}} {unit}<extra></extra>",
     )
+    words: list[dict[str, object]] = []
+    ends: list[dict[str, object]] = []
     for row, (name, value) in enumerate(now):
-        figure.add_annotation(
-            x=0, y=row, xanchor="right", xshift=-8, text=name, showarrow=False,
-            font={"size": TEXT_PX, "color": ink.text},
-        )  # fmt: skip
         other = None if then is None else then.get(name, 0.0)
-        told = _told(value, other, units)
+        words.append(
+            {"x": 0, "xanchor": "right", "xshift": -8, "text": name, "font": {"size": TEXT_PX}}
+        )
+        words.append(
+            {
+                "x": max(_number(value, units), _number(other or 0.0, units)),
+                "xanchor": "left",
+                "xshift": 8,
+                "text": _told(value, other, units),
+                "font": {"size": NOTE_PX + 1},
+            }
+        )
+        for one in words[-2:]:
+            one.update({"y": row, "showarrow": False, "font_color": ink.text})
         if other is not None:
             end = _number(other, units)
-            figure.add_shape(
-                type="line", x0=end, x1=end, y0=row - 0.36, y1=row + 0.36,
-                line={"color": ink.target, "width": 3},
-            )  # fmt: skip
-        figure.add_annotation(
-            x=max(_number(value, units), _number(other or 0.0, units)),
-            y=row,
-            xanchor="left",
-            xshift=8,
-            text=told,
-            showarrow=False,
-            font={"size": NOTE_PX + 1, "color": ink.text},
-        )
+            ends.append(
+                {
+                    "type": "line",
+                    "x0": end,
+                    "x1": end,
+                    "y0": row - 0.36,
+                    "y1": row + 0.36,
+                    "line": {"color": ink.target, "width": 3},
+                }
+            )
+    # All at once: each one added alone checks those before it again.
+    figure.update_layout(annotations=words, shapes=ends)
     longest = max(*values, *(_number(one, units) for one in (then or {"": 0.0}).values()))
     figure.update_xaxes(
         range=[min(0.0, *values), longest * 1.02],

@@ -223,8 +223,21 @@ def _stations(
                 "font": {"size": size, "color": ink.text},
             }
         )
-    for one in path:
-        figure.add_vline(x=one.minutes, line={"width": 1, "color": ink.rule}, layer="below")
+    rules = [
+        {
+            "type": "line",
+            "x0": one.minutes,
+            "x1": one.minutes,
+            "y0": 0,
+            "y1": 1,
+            "yref": "y domain",
+            "line": {"width": 1, "color": ink.rule},
+            "layer": "below",
+        }
+        for one in path
+    ]
+    # All at once: each shape added alone checks those before it again.
+    figure.layout.shapes = (*figure.layout.shapes, *rules)
 
 
 def _grouped(path: Sequence[PathPoint], room: Room, size: float) -> list[list[PathPoint]]:

@@ -219,17 +219,16 @@ def costs(found: Wastes, units: UnitSystem) -> Any:
     for one in found.each():
         by = 1.0 / 1.8 if units == "us" and one is found.overheating else 1.0
         low, _, high = (value * by for value in one.gross_kwh_t)
-        money = ""
+        told: list[Any] = [f"{_bare(low, units)} to {_heat(high, units)}"]
         if one.money_h:
-            money = f"{one.money_h[0] * by:.1f} to {one.money_h[2] * by:.1f} {found.currency}/h"
+            told += [
+                html.Br(),
+                f"{one.money_h[0] * by:.1f} to {one.money_h[2] * by:.1f} {found.currency}/h",
+            ]
         unit = one.unit.replace("Celsius", "Fahrenheit") if units == "us" else one.unit
         rows.append(
             html.Tr(
-                [
-                    html.Th(f"{one.name}: {unit}", scope="row"),
-                    html.Td(f"{_bare(low, units)} to {_heat(high, units)}", className="number"),
-                    html.Td(money, className="number"),
-                ]
+                [html.Th(f"{one.name}: {unit}", scope="row"), html.Td(told, className="number")]
             )
         )
     least, most = (
