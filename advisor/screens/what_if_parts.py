@@ -200,6 +200,7 @@ def numbers(found: WhatIf, changed: bool, units: UnitSystem) -> Any:
                             ]
                         )
                         for name, now, then in rows
+                        if now or changed
                     ]
                 ),
             ]
