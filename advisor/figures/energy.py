@@ -98,6 +98,7 @@ def energy_bars(
         range=[min(0.0, *values), longest * 1.02],
         showgrid=True,
         ticksuffix=f" {unit}",
+        showticksuffix="last",
         tickangle=0,
         nticks=2 if narrow else 4,
     )
