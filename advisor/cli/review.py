@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import sys
+from dataclasses import replace
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -11,6 +12,7 @@ import click
 from advisor.cli.asked import json_option, plant_argument, us_option
 
 if TYPE_CHECKING:
+    from datetime import datetime
     from zoneinfo import ZoneInfo
 
     from advisor.review.result import Excursion, Review, Span
@@ -24,10 +26,22 @@ _WIDE = 96  # of the column that says why
 @click.option("--from", "start", metavar="TIME", help="Plant time; else the log's first row.")
 @click.option("--to", "end", metavar="TIME", help="Plant time; else the log's last row.")
 @click.option("--loads", "loads", is_flag=True, help="Also list the loads outside their window.")
+@click.option(
+    "--set-aside",
+    "not_used",
+    type=click.Path(dir_okay=False, path_type=Path),
+    help="Write the rows of all exports that were not used, and why, to this CSV file.",
+)
 @us_option
 @json_option
 def review(
-    plant: Path, start: str | None, end: str | None, loads: bool, units: UnitSystem, as_json: bool
+    plant: Path,
+    start: str | None,
+    end: str | None,
+    loads: bool,
+    not_used: Path | None,
+    units: UnitSystem,
+    as_json: bool,
 ) -> None:
     """Compare the log of PLANT with what was advised: where hot, where cold, why, what it cost.
 
@@ -39,15 +53,15 @@ def review(
     from advisor.advice.open_plant import open_plant
     from advisor.cli.output import print_json
     from advisor.errors import FaultyInput
+    from advisor.logs import write_set_aside
     from advisor.review.plant import log_span, review_plant
-    from advisor.settings.moments import utc_of
 
-    facts = open_plant(plant, latest_only=True)
+    facts = replace(open_plant(plant, latest_only=True), units=units)
     with facts.records:
         first, last = log_span(facts)
         zone = facts.folder.zone
-        begin = utc_of(start, zone) if start else first
-        until = utc_of(end, zone) if end else last
+        begin = _moment(start, "--from", zone) or first
+        until = _moment(end, "--to", zone) or last
         if until <= begin:
             raise FaultyInput.of(
                 "period-empty",
@@ -63,15 +77,32 @@ def review(
             def progress(done: int, of: int) -> None:
                 bar.update(round(100 * done / max(of, 1)) - bar.pos)
 
-            found = review_plant(facts, begin, until, progress).review
+            made = review_plant(facts, begin, until, progress)
+    found = made.review
+    if not_used:
+        write_set_aside(made.reports, not_used)
     if as_json:
         print_json(found)
         return
     _print(found, zone, units, loads)
 
 
+def _moment(text: str | None, option: str, zone: ZoneInfo) -> datetime | None:
+    """The moment written after ``option``; None where nothing is."""
+    from advisor.errors import FaultyInput
+    from advisor.settings.moments import utc_of
+
+    if text is None:
+        return None
+    try:
+        return utc_of(text, zone)
+    except FaultyInput as error:
+        raise FaultyInput(*(replace(one, field=option) for one in error.faults)) from None
+
+
 def _print(found: Review, zone: ZoneInfo, units: UnitSystem, loads: bool) -> None:
     from advisor.cli.output import print_table
+    from advisor.review.ranking import cause_shares
     from advisor.units import shown
 
     click.echo(
@@ -102,10 +133,32 @@ def _print(found: Review, zone: ZoneInfo, units: UnitSystem, loads: bool) -> Non
         f"\nStart-ups and mix changes, apart: {_range(found.start_up_waste.fuel_kwh)} kWh, "
         f"{_range(found.start_up_waste.money)} {found.currency}.\n"
     )
+    for none in found.no_advice:
+        click.echo(f"No advice for {mass(none.tonnes)} of {none.mix}: {none.why}.")
+    if found.no_advice:
+        click.echo()
+    causes = cause_shares(found.excursions)
+    if causes:
+        click.echo("Outside the window at the drum, by likely cause:")
+        print_table(
+            ("likely cause", "times", "min", "hot", "cold", "fuel too much"),
+            [
+                (
+                    one.cause,
+                    str(one.count),
+                    f"{one.minutes:.0f}",
+                    mass(one.hot_tonnes),
+                    mass(one.cold_tonnes),
+                    f"{_range(one.waste.fuel_kwh)} kWh",
+                )
+                for one in causes
+            ],
+        )
+        click.echo()
     at_drum = [one for one in found.excursions if one.point == "discharge"]
     of_loads = [one for one in found.excursions if one.point != "discharge"]
     if at_drum:
-        click.echo("Outside the window at the drum:")
+        click.echo("Outside the window at the drum, one by one:")
         _print_excursions(at_drum, zone, units)
     if of_loads and loads:
         click.echo("\nLoads outside their window:")
@@ -113,8 +166,8 @@ def _print(found: Review, zone: ZoneInfo, units: UnitSystem, loads: bool) -> Non
     elif of_loads:
         click.echo(f"\nLoads outside their window: {len(of_loads)} stretches; --loads lists them.")
     click.echo(
-        f"\nFiles of the log: {found.rows_read} rows read, {found.rows_used} used, "
-        f"{found.rows_set_aside} set aside; in this period {found.rows_in_period} rows."
+        f"\nRows of the log in this period: {found.rows_read} read, {found.rows_used} used, "
+        f"{found.rows_set_aside} set aside. Not used, or not believed:"
     )
     for one in found.set_aside:
         click.echo(f"  {one.signal}: {one.reason}, {one.count}")

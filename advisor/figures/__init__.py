@@ -1,6 +1,6 @@
 """A result in, a Plotly figure out. Pure functions; nothing is read, decided or worked out here."""
 
-from advisor.figures.bars import bars_height, cause_bars, cause_shares, mix_bars
+from advisor.figures.bars import bars_height, cause_bars, mix_bars
 from advisor.figures.drawn import Reading, TicketPoint, Trace, WindowSpan
 from advisor.figures.heat_path import heat_path, heat_path_words
 from advisor.figures.ink import ink_of
@@ -15,7 +15,6 @@ __all__ = [
     "WindowSpan",
     "bars_height",
     "cause_bars",
-    "cause_shares",
     "field_height",
     "field_words",
     "heat_path",

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from pathlib import Path
 from typing import Any
 
@@ -45,6 +45,7 @@ class _Cells:
     """The cells of one signal: its distinct texts as numbers, and which of them each row holds."""
 
     signal: str
+    texts: tuple[str, ...]
     numbers: Numbers
     which: NDArray[np.int32]
 
@@ -103,7 +104,9 @@ def read_export_bytes(raw: bytes, file: str, source: LogSource, plant_zone: str)
     order = np.argsort(used["time"].to_numpy(), kind="stable")
     if (np.diff(order) < 0).any():
         notes.append("The rows were not in order of time; they are sorted.")
-    together = sorted((*rows.set_aside, *set_aside), key=lambda row: row.line)
+    together = _placed_in_time(
+        sorted((*rows.set_aside, *set_aside), key=lambda row: row.line), rows.lines[kept], used
+    )
     report = IntakeReport(
         source=file,
         kind=source.kind,
@@ -117,6 +120,21 @@ def read_export_bytes(raw: bytes, file: str, source: LogSource, plant_zone: str)
     )
     sorted_frame = used.iloc[order].reset_index(drop=True)
     return Intake(sorted_frame, rows.lines[kept][order], report)
+
+
+def _placed_in_time(
+    set_aside: list[SetAsideRow], lines: NDArray[np.int64], used: pd.DataFrame
+) -> list[SetAsideRow]:
+    """``set_aside`` with the moment of the used row before each, by their lines in the file."""
+    if not len(used):
+        return set_aside
+    order = np.argsort(lines, kind="stable")
+    before = np.searchsorted(lines[order], [row.line for row in set_aside]) - 1
+    near = used["time"].iloc[order[np.maximum(before, 0)]]
+    return [
+        replace(row, near=moment.to_pydatetime())
+        for row, moment in zip(set_aside, near, strict=True)
+    ]
 
 
 def _times(
@@ -203,7 +221,7 @@ def _signals(
             columns[signal] = pd.array(texts.as_array(), dtype="str")
             continue
         numbers = _numbers(texts, signal, units.get(heading, ""), decimal, source, mapped.words)
-        cells.append(_Cells(signal, numbers, texts.which))
+        cells.append(_Cells(signal, texts.texts, numbers, texts.which))
         values = numbers.inside[texts.which]
         if is_switch(signal):
             columns[signal] = pd.array(
@@ -279,7 +297,8 @@ def _unread(
             hit = which[column.which] & kept if which.any() else kept & False
             if hit.any():
                 first = int(lines[int(np.argmax(hit))])
-                yield UnreadCells(column.signal, reason, int(hit.sum()), first)
+                text = column.texts[column.which[int(np.argmax(hit))]]
+                yield UnreadCells(column.signal, reason, int(hit.sum()), first, text)
 
 
 def _drop_repeats(

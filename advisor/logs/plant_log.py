@@ -129,7 +129,12 @@ def _joined(intakes: list[Intake], key: str) -> tuple[pd.DataFrame, list[IntakeR
     reports = []
     for number, intake in enumerate(intakes):
         repeated = [
-            SetAsideRow(int(lines[row]), f"same {key} in a later file, which is used", "")
+            SetAsideRow(
+                int(lines[row]),
+                f"same {key} in a later file, which is used",
+                "",
+                whole["time"].iloc[row].to_pydatetime(),
+            )
             for row in np.flatnonzero(again & (file_of == number))
         ]
         reports.append(intake.report.with_set_aside(tuple(repeated)))

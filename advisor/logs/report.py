@@ -5,6 +5,7 @@ from __future__ import annotations
 import csv
 import json
 from dataclasses import asdict, dataclass, replace
+from datetime import datetime
 from pathlib import Path
 
 from advisor.errors import AdvisorError, Fault
@@ -14,21 +15,27 @@ LONGEST_TEXT = 300  # a set-aside row is shown, not archived; the file itself is
 
 @dataclass(frozen=True)
 class SetAsideRow:
-    """One row that was not used: its line in the file, the text of it, and why."""
+    """One row that was not used: its line in the file, the text of it, and why.
+
+    ``near`` is the moment (UTC) of the used row before it, of the one after it where it stands
+    first; None where the file holds no used row.
+    """
 
     line: int
     reason: str
     text: str
+    near: datetime | None = None
 
 
 @dataclass(frozen=True)
 class UnreadCells:
-    """Cells of one signal that hold no number although their row is used."""
+    """Cells of one signal that hold no number although their row is used; the first as written."""
 
     signal: str
     reason: str
     count: int
     first_line: int
+    first_text: str = ""
 
 
 @dataclass(frozen=True)
@@ -72,13 +79,25 @@ class IntakeReport:
         together = tuple(sorted((*self.set_aside, *rows), key=lambda row: row.line))
         return replace(self, rows_used=self.rows_used - len(rows), set_aside=together)
 
+    def set_aside_between(self, start: datetime, end: datetime) -> tuple[SetAsideRow, ...]:
+        """Rows set aside from ``start`` (included) to ``end`` (not included), aware times.
+
+        One of a file that holds no used row has no place in time: it counts in every period.
+        """
+        return tuple(row for row in self.set_aside if row.near is None or start <= row.near < end)
+
     def with_notes(self, notes: tuple[str, ...]) -> IntakeReport:
         """The report with ``notes`` added."""
         return replace(self, notes=(*self.notes, *notes))
 
     def as_dict(self) -> dict[str, object]:
         """Every part by name, for programs."""
-        return {**asdict(self), "refused": self.refused.as_dict() if self.refused else None}
+        told = {**asdict(self), "refused": self.refused.as_dict() if self.refused else None}
+        told["set_aside"] = [
+            {**asdict(row), "near": row.near.isoformat() if row.near else None}
+            for row in self.set_aside
+        ]
+        return told
 
 
 def refused_report(source: str, kind: str, error: AdvisorError) -> IntakeReport:

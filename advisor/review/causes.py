@@ -9,13 +9,15 @@ import pandas as pd
 from numpy.typing import NDArray
 
 from advisor.review.result import State
+from advisor.units import UnitSystem, shown
 
 
 @dataclass(frozen=True)
 class CauseRules:
     """How far back to look and what counts as a change; values come from config/review.yaml.
 
-    ``scatter_k`` is the standard deviation of the plant's own control about its setpoint.
+    ``scatter_k`` is the standard deviation of the plant's own control about its setpoint;
+    ``units`` are those of the evidence.
     """
 
     look_back_s: float
@@ -23,6 +25,7 @@ class CauseRules:
     heat_change: float
     window_change_k: float
     scatter_k: float
+    units: UnitSystem = "si"
 
 
 _LEAST_ROWS = 10  # fewer rows before an excursion say nothing about what changed
@@ -70,7 +73,8 @@ def likely_cause(
     if -outward * window_shift > rules.window_change_k:
         return Cause(
             "setpoint not changed",
-            f"The window moved by {window_shift:+.0f} K and the discharge did not follow.",
+            f"The window moved {difference(window_shift, rules.units)} "
+            f"{'up' if window_shift > 0 else 'down'} and the discharge did not follow.",
         )
     rate_shift = _relative(now["rate_kgs"], before["rate_kgs"])
     if abs(rate_shift) > rules.rate_change:
@@ -86,23 +90,28 @@ def likely_cause(
         return Cause(
             "moisture fell" if side == "hot" else "moisture rose",
             f"Rate and burner stayed ({heat_shift:+.0%} heat per tonne) while the mix got "
-            f"{moved:.0f} K {went}, as {stone} stone would do.",
+            f"{difference(moved, rules.units)} {went}, as {stone} stone would do.",
         )
     near = outward * (before["window_c"] - before["discharge_c"])
     if near < rules.scatter_k:
-        place = f"{abs(near):.0f} K {'inside' if near > 0 else 'outside'}"
+        place = "inside" if near > 0 else "outside"
         return Cause(
             "setpoint",
-            f"It already ran {place} of this edge before; control scatters by "
-            f"{rules.scatter_k:.1f} K.",
+            f"It already ran {difference(near, rules.units)} {place} this edge before; control "
+            f"scatters by {shown(rules.scatter_k, 'temperature_delta', rules.units)}.",
         )
     if moved <= _BEYOND_SCATTER * rules.scatter_k and time_s[end - 1] - since < rules.look_back_s:
         return Cause(
             "control scatter",
-            f"A short swing of {moved:.0f} K; the plant's control scatters by "
-            f"{rules.scatter_k:.1f} K.",
+            f"A short swing of {difference(moved, rules.units)}; the plant's control scatters by "
+            f"{shown(rules.scatter_k, 'temperature_delta', rules.units)}.",
         )
     return Cause("not known", "Rate, burner and window did not change enough to explain it.")
+
+
+def difference(value_k: float, units: UnitSystem) -> str:
+    """Size of a temperature difference ``value_k`` in ``units``, without its sign."""
+    return shown(abs(value_k), "temperature_delta", units, 0)
 
 
 def _settled(rows: pd.DataFrame) -> NDArray[np.bool_]:

@@ -20,6 +20,7 @@ from advisor.review.result import (
     Excursion,
     HourCell,
     MixShare,
+    NoAdvice,
     SetAside,
     State,
     StateShare,
@@ -62,6 +63,7 @@ class Findings:
     hot_tonnes: float
     cold_tonnes: float
     no_advice_tonnes: float
+    no_advice: tuple[NoAdvice, ...]
     waste: Waste
     start_up_waste: Waste
 
@@ -240,6 +242,7 @@ def review_rows(
         hot_tonnes=float(tonnes[hot].sum()),
         cold_tonnes=float(tonnes[cold].sum()),
         no_advice_tonnes=float(tonnes[~known].sum()),
+        no_advice=_no_advice(rows),
         waste=waste_of(float(excess[~settling].sum()), price),
         start_up_waste=waste_of(float(excess[settling].sum()), price),
     )
@@ -306,6 +309,17 @@ def _mix_shares(rows: pd.DataFrame, price: HeatPrice) -> tuple[MixShare, ...]:
             )
         )
     return tuple(sorted(shares, key=lambda one: -one.tonnes))
+
+
+def _no_advice(rows: pd.DataFrame) -> tuple[NoAdvice, ...]:
+    """Tonnes that could not be judged, by mix and reason, the most first."""
+    part = rows[(rows["tonnes"] > 0) & rows["over_k"].isna()]
+    why = part.get("why_none", pd.Series("", index=part.index)).fillna("")
+    why = why.where(why != "", "no run of this mix was on the order sheet")
+    why = why.where(part["used_c"].notna(), "no believed reading of the discharge")
+    sums = part.groupby([part["mix_id"], why])["tonnes"].sum()
+    found = [NoAdvice(str(mix), str(reason), float(sum_)) for (mix, reason), sum_ in sums.items()]
+    return tuple(sorted(found, key=lambda one: -one.tonnes))
 
 
 def _set_aside(log: pd.DataFrame) -> tuple[SetAside, ...]:

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
+from dataclasses import dataclass
 from typing import Literal
 
 import numpy as np
@@ -9,6 +11,7 @@ import pandas as pd
 from numpy.typing import NDArray
 
 from advisor.review.kernel import ReviewRules, join_timeline
+from advisor.review.load_causes import load_cause
 from advisor.review.result import NO_WASTE, Excursion
 from advisor.review.runs import outside_runs
 
@@ -18,7 +21,14 @@ LoadPoint = Literal["load_out", "delivery"]
 _SIGNAL: dict[LoadPoint, str] = {"load_out": "load_out_c", "delivery": "delivery_c"}
 _LONGEST_BETWEEN_S = 3600.0  # loads further apart are not one stretch
 _MAKING_S = 600.0  # about the time it takes to make one truck load
-_LONG_IN_SILO_S = 2 * 3600.0
+
+
+@dataclass(frozen=True)
+class Road:
+    """Time planned from load-out to unloading, and its spread [s]."""
+
+    planned_s: float
+    spread_s: float
 
 
 def make_times(tickets: pd.DataFrame, rows: pd.DataFrame) -> pd.Series:
@@ -49,18 +59,35 @@ def make_times(tickets: pd.DataFrame, rows: pd.DataFrame) -> pd.Series:
 
 
 def judged_loads(
-    tickets: pd.DataFrame, arrivals: pd.DataFrame, rows: pd.DataFrame, timeline: pd.DataFrame
+    tickets: pd.DataFrame,
+    arrivals: pd.DataFrame,
+    rows: pd.DataFrame,
+    timeline: pd.DataFrame,
+    roads: Mapping[str, Road],
 ) -> pd.DataFrame:
     """Every ticket with when its mix was made, its arrival, and the windows then in force.
 
-    ``made_over_k`` and ``made_under_k`` [K] are how far outside its window it left the drum.
+    ``tickets`` and ``arrivals`` as the logs room returns them, ``rows`` as trace_rows does,
+    ``timeline`` as timeline_frame does, ``roads`` by job.
+
+    ``made_over_k`` and ``made_under_k`` [K] are how far outside its window it left the drum;
+    ``silo_over_k`` and ``silo_under_k`` the furthest that mix made since then did;
+    ``planned_road_s`` and ``road_spread_s`` [s] are those of its job.
     """
     loads = tickets.reset_index(drop=True)
     loads = loads.assign(made=make_times(loads, rows))
     joined = join_timeline(loads, timeline, at="made")
     loads = pd.concat([loads, joined.drop(columns=["job"])], axis=1)
     drum = _mean_of_making(loads, rows)
-    loads = loads.assign(made_over_k=drum["over_k"], made_under_k=drum["under_k"])
+    job = loads.get("job", pd.Series("", index=loads.index))
+    loads = loads.assign(
+        made_over_k=drum["over_k"],
+        made_under_k=drum["under_k"],
+        silo_over_k=drum["most_over_k"],
+        silo_under_k=drum["most_under_k"],
+        planned_road_s=[roads[one].planned_s if one in roads else np.nan for one in job],
+        road_spread_s=[roads[one].spread_s if one in roads else np.nan for one in job],
+    )
     if len(arrivals):
         arrived = arrivals.rename(columns={"time": "arrived"})
         columns = [
@@ -71,10 +98,12 @@ def judged_loads(
 
 
 def _mean_of_making(loads: pd.DataFrame, rows: pd.DataFrame) -> pd.DataFrame:
-    """Mean distance from the window over the minutes in which the mix of each load was made."""
+    """Mean distance from the window while the mix of each load was made, and the furthest such
+    mean from then until it was loaded: in the silo, mix of before and after mingles."""
     time_s = rows["time_s"].to_numpy()
     end_s = loads["made"].astype("int64").to_numpy() / 1e6
-    found = {}
+    out_s = loads["time"].astype("datetime64[us, UTC]").astype("int64").to_numpy() / 1e6
+    found: dict[str, Floats] = {}
     for name in ("over_k", "under_k"):
         values = rows[name].to_numpy(float)
         known = np.isfinite(values)
@@ -85,11 +114,32 @@ def _mean_of_making(loads: pd.DataFrame, rows: pd.DataFrame) -> pd.DataFrame:
         several = np.maximum(count[last] - count[first], 1)
         mean = (total[last] - total[first]) / several
         found[name] = np.where(count[last] > count[first], mean, np.nan)
+        begin = np.searchsorted(time_s, time_s - _MAKING_S)
+        place = np.arange(1, len(time_s) + 1)
+        rolling = (total[place] - total[begin]) / np.maximum(count[place] - count[begin], 1)
+        rolling[count[place] == count[begin]] = np.nan
+        until = np.searchsorted(time_s, out_s, side="right")
+        found[f"most_{name}"] = np.array(
+            [
+                float(np.nanmax(part)) if np.isfinite(part).any() else np.nan
+                for part in (
+                    rolling[a - 1 : b] for a, b in zip(np.maximum(last, 1), until, strict=True)
+                )
+            ],
+            float,
+        )
     return pd.DataFrame(found, index=loads.index)
 
 
-def load_excursions(loads: pd.DataFrame, point: LoadPoint, rules: ReviewRules) -> list[Excursion]:
-    """Stretches of loads outside their window at ``point``, oldest first."""
+def load_excursions(
+    loads: pd.DataFrame, point: LoadPoint, rules: ReviewRules, sensor_sd_k: float = 0.0
+) -> list[Excursion]:
+    """Stretches of ``loads``, as judged_loads returns them, outside their window at ``point``.
+
+    Oldest first. What never gets further out than the dead band of ``rules``, or than two standard
+    deviations of the thermometer, ``sensor_sd_k`` [K], is not told.
+    """
+    dead_band_k = max(rules.dead_band_k, 2.0 * sensor_sd_k)
     signal = _SIGNAL[point]
     if signal not in loads.columns:
         return []
@@ -105,19 +155,21 @@ def load_excursions(loads: pd.DataFrame, point: LoadPoint, rules: ReviewRules) -
         ):
             runs = outside_runs(time_s, over, rules.dead_band_k, 0.0, _LONGEST_BETWEEN_S)
             found += [
-                _excursion(one.iloc[start:end], over[start:end], point, side, at)
+                _excursion(one.iloc[start:end], over[start:end], point, side, at, rules)
                 for start, end in zip(*runs, strict=True)
-                if np.nanmax(over[start:end]) >= rules.dead_band_k
+                if np.nanmax(over[start:end]) >= dead_band_k
             ]
     return sorted(found, key=lambda one: one.start)
 
 
-def _excursion(part: pd.DataFrame, over: Floats, point: LoadPoint, side: str, at: str) -> Excursion:
+def _excursion(
+    part: pd.DataFrame, over: Floats, point: LoadPoint, side: str, at: str, rules: ReviewRules
+) -> Excursion:
     mass = part["mass_kg"].to_numpy(float)
     beyond = np.maximum(np.nan_to_num(over), 0.0)
     bound = part[f"{point}_{'high' if side == 'hot' else 'low'}_c"].iloc[0]
     first, last = part[at].iloc[0], part[at].iloc[-1]
-    cause, evidence = _cause(part, point, side)
+    cause = load_cause(part, point, side, rules.causes)
     return Excursion(
         point=point,
         side=side,  # type: ignore[arg-type]
@@ -133,28 +185,6 @@ def _excursion(part: pd.DataFrame, over: Floats, point: LoadPoint, side: str, at
         tank=str(part["tank"].iloc[0]),
         state="production",
         waste=NO_WASTE,
-        cause=cause,
-        evidence=evidence,
+        cause=cause.name,
+        evidence=cause.evidence,
     )
-
-
-def _cause(part: pd.DataFrame, point: LoadPoint, side: str) -> tuple[str, str]:
-    """Likely cause of loads outside their window, and what supports it."""
-    count = len(part)
-    tickets = ", ".join(str(one) for one in part["ticket"].head(6)) + (" ..." if count > 6 else "")
-    loads = f"{count} load{'s' if count > 1 else ''} ({tickets})"
-    made = part["made_over_k" if side == "hot" else "made_under_k"].to_numpy(float)
-    so_made = int(np.count_nonzero(made > 0.0))
-    if so_made * 2 >= count:
-        word = "hotter" if side == "hot" else "colder"
-        return f"made {side}", f"{loads}: {so_made} left the drum {word} than its window."
-    rested_s = (part["time"] - part["made"]).dt.total_seconds().to_numpy(float)
-    if side == "cold" and np.median(rested_s) > _LONG_IN_SILO_S:
-        return "long in the silo", f"{loads}: {np.median(rested_s) / 3600.0:.1f} h in the silo."
-    if point == "load_out":
-        told = "the drum was inside its window; compare the load-out thermometer with a probe."
-        return "silo or thermometer", f"{loads}: {told}"
-    road_min = (part["arrived"] - part["time"]).dt.total_seconds().median() / 60.0
-    keeps = "more" if side == "hot" else "less"
-    told = f"{road_min:.0f} min on the road; the truck keeps {keeps} heat than reckoned, or the"
-    return "haul or thermometer", f"{loads}: made inside, {told} thermometer is off."

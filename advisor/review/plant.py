@@ -8,35 +8,43 @@ from datetime import datetime, timedelta
 
 import pandas as pd
 
+from advisor.advice.advise import sensor_sd_k
 from advisor.advice.facts import PlantFacts
 from advisor.advice.fuel import fuel_called, kelvin_too_much, money_per_j
 from advisor.advice.situation import gather_situation
 from advisor.advice.timeline import TimelineRow, build_timeline, timeline_frame
 from advisor.errors import AdvisorError, MissingInput
-from advisor.logs import PlantLog, read_logs
+from advisor.logs import IntakeReport, PlantLog, read_logs
 from advisor.review.causes import CauseRules
 from advisor.review.kernel import Findings, ReviewRules, review_rows, trace_rows
-from advisor.review.loads import judged_loads, load_excursions
+from advisor.review.loads import Road, judged_loads, load_excursions
 from advisor.review.result import Excursion, Review, SetAside, Span
 from advisor.review.sentence import review_sentence
 from advisor.review.states import StateRules
 from advisor.review.waste import HeatPrice
 from advisor.settings.cautions import caution_text
 from advisor.settings.tables import load_table
+from advisor.units import UnitSystem
+
+_MIX_C = 160.0  # where thermometers of mix are used; their tolerance hardly changes about it
 
 
 @dataclass(frozen=True, eq=False)
 class PlantReview:
-    """A review with what it was made from: the judged rows and loads, and the timeline."""
+    """A review with what it was made from: judged rows and loads, timeline, reports of the log."""
 
     review: Review
     rows: pd.DataFrame
     loads: pd.DataFrame
     timeline: tuple[TimelineRow, ...]
+    reports: tuple[IntakeReport, ...]
 
 
-def review_rules(scatter_k: float) -> ReviewRules:
-    """The rules of config/review.yaml, for a plant whose control scatters by ``scatter_k`` [K]."""
+def review_rules(scatter_k: float, units: UnitSystem = "si") -> ReviewRules:
+    """The rules of config/review.yaml, for a plant whose control scatters by ``scatter_k`` [K].
+
+    ``units`` are those of the evidence.
+    """
     table = load_table("review")
     excursion, states, cause = table.row("excursion"), table.row("states"), table.row("cause")
     return ReviewRules(
@@ -59,6 +67,7 @@ def review_rules(scatter_k: float) -> ReviewRules:
             heat_change=cause["heat_change"],
             window_change_k=cause["window_change"],
             scatter_k=scatter_k,
+            units=units,
         ),
     )
 
@@ -102,19 +111,28 @@ def review_plant(
         )
     timeline = build_timeline(facts, start, end, progress)
     frame = timeline_frame(timeline)
-    rules = review_rules(float(facts.folder.plant.control_scatter))
+    rules = review_rules(float(facts.folder.plant.control_scatter), facts.units)
     price = heat_price(facts, timeline)
     rows = trace_rows(log.frame, frame, rules)
     findings = review_rows(rows, rules, price, facts.folder.plant.time_zone)
-    loads = judged_loads(log.tickets, log.arrivals, rows, frame)
+    roads = {
+        job.code: Road(float(job.on_road_s), float(job.haul.spread)) for job in facts.folder.jobs
+    }
+    loads = judged_loads(log.tickets, log.arrivals, rows, frame, roads)
     excursions = [
         *findings.excursions,
-        *load_excursions(loads, "load_out", rules),
-        *load_excursions(loads, "delivery", rules),
+        *load_excursions(loads, "load_out", rules, _sensor_sd_k(facts, "load_out_c")),
+        *load_excursions(loads, "delivery", rules, _sensor_sd_k(facts, "delivery_c")),
     ]
     excursions.sort(key=lambda one: one.start)
     review = _assembled(facts, start, end, log, findings, tuple(excursions))
-    return PlantReview(review, rows, loads, tuple(timeline))
+    return PlantReview(review, rows, loads, tuple(timeline), log.reports)
+
+
+def _sensor_sd_k(facts: PlantFacts, signal: str) -> float:
+    """Standard deviation [K] of a thermometer of mix, 0 where the plant does not tell it."""
+    sensor = facts.folder.plant.sensors.get(signal)
+    return sensor_sd_k(sensor, _MIX_C) if sensor else 0.0
 
 
 def heat_price(facts: PlantFacts, timeline: list[TimelineRow]) -> HeatPrice:
@@ -147,21 +165,25 @@ def _assembled(
     excursions: tuple[Excursion, ...],
 ) -> Review:
     plant = facts.folder.plant
-    of_log = [report for report in log.reports if report.kind == "plant_log"]
+    not_used = [
+        (f"{report.source}: {row.reason}", row.near)
+        for report in log.reports
+        if report.kind == "plant_log"
+        for row in report.set_aside_between(start, end)
+    ]
     dropped = tuple(
-        SetAside(f"{report.source}: {reason}", "row", count)
-        for report in of_log
-        for reason, count in report.reasons().items()
+        SetAside(reason, "row", len(when), *_first_and_last(when))
+        for reason in dict.fromkeys(reason for reason, _ in not_used)
+        if (when := [near for told, near in not_used if told == reason])
     )
     return Review(
         plant=plant.name,
         start=start,
         end=end,
         time_zone=plant.time_zone,
-        rows_read=sum(report.rows_read for report in of_log),
-        rows_used=sum(report.rows_used for report in of_log),
-        rows_set_aside=sum(report.rows_read - report.rows_used for report in of_log),
-        rows_in_period=len(log.frame),
+        rows_read=len(log.frame) + len(not_used),
+        rows_used=len(log.frame),
+        rows_set_aside=len(not_used),
         set_aside=(*dropped, *findings.set_aside),
         states=findings.states,
         cells=findings.cells,
@@ -177,4 +199,10 @@ def _assembled(
         currency=plant.currency,
         sentence=review_sentence(findings, plant.currency),
         cautions=(caution_text("C14"),),
+        no_advice=findings.no_advice,
     )
+
+
+def _first_and_last(when: list[datetime | None]) -> tuple[datetime | None, datetime | None]:
+    known = sorted(one for one in when if one is not None)
+    return (known[0], known[-1]) if known else (None, None)

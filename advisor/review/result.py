@@ -124,8 +124,17 @@ class MixShare:
 
 
 @dataclass(frozen=True)
+class NoAdvice:
+    """Tonnes of a mix made while there was no advice to compare with, and why there was none."""
+
+    mix: str
+    why: str
+    tonnes: float
+
+
+@dataclass(frozen=True)
 class SetAside:
-    """Readings not used, and why; ``fate`` is a row dropped or a reading marked."""
+    """Rows or readings not used, and why; ``signal`` is 'row' where a whole row was not."""
 
     reason: str
     signal: str
@@ -138,8 +147,8 @@ class SetAside:
 class Review:
     """A plant's period against the advice that was in force.
 
-    ``rows_read``, ``rows_used`` and ``rows_set_aside`` count the log's files, ``rows_in_period``
-    the part of them that was looked at.
+    ``rows_read``, ``rows_used`` and ``rows_set_aside`` count the rows of the period, also where
+    the log's files reach beyond it.
     """
 
     plant: str
@@ -149,7 +158,6 @@ class Review:
     rows_read: int
     rows_used: int
     rows_set_aside: int
-    rows_in_period: int
     set_aside: tuple[SetAside, ...]
     states: tuple[StateShare, ...]
     cells: tuple[HourCell, ...]
@@ -165,3 +173,4 @@ class Review:
     currency: str
     sentence: str
     cautions: tuple[str, ...] = ()
+    no_advice: tuple[NoAdvice, ...] = ()

@@ -8,11 +8,12 @@ from typing import Any
 from dash import Dash, Input, Output, State, ctx, dcc, html
 
 from advisor.errors import AdvisorError
-from advisor.figures.bars import bars_height, cause_bars, cause_shares, mix_bars
+from advisor.figures.bars import bars_height, cause_bars, mix_bars
 from advisor.figures.base import STILL, ZOOMED, blank
 from advisor.figures.ink import ink_of
 from advisor.figures.trend import trend, trend_words
 from advisor.figures.week_field import field_height, field_words, week_field
+from advisor.review.ranking import cause_shares
 from advisor.review.result import Review
 from advisor.screens import review_parts as parts
 from advisor.screens.choosing import (

@@ -94,7 +94,7 @@ def field_title(units: UnitSystem) -> str:
 def empty_review(plant: str, start: datetime, end: datetime, time_zone: str) -> Review:
     """A period with nothing in it."""
     return Review(
-        plant, start, end, time_zone, 0, 0, 0, 0, (), (), (), (), (), 0.0, 0.0, 0.0, 0.0, 0.0,
+        plant, start, end, time_zone, 0, 0, 0, (), (), (), (), (), 0.0, 0.0, 0.0, 0.0, 0.0,
         NO_WASTE, NO_WASTE, "", "",
     )  # fmt: skip
 
@@ -158,8 +158,8 @@ def set_aside_table(review: Review, zone: ZoneInfo) -> Any:
     ]
     return [
         html.P(
-            f"Files: {review.rows_read:,} rows read = {review.rows_used:,} used + "
-            f"{review.rows_set_aside:,} set aside. This period: {review.rows_in_period:,} rows. "
+            f"{review.rows_read:,} rows of the log = {review.rows_used:,} used + "
+            f"{review.rows_set_aside:,} set aside. "
             "A row may carry several marked readings."
         ),
         html.Table(html.Tbody(rows)) if rows else html.P("Nothing was set aside."),

@@ -117,17 +117,49 @@ def test_start_ups_are_kept_apart_from_the_waste_of_production(week):
 
 def test_every_row_of_the_log_is_in_one_state_for_its_whole_time(week):
     minutes_of = sum(one.minutes for one in week.review.states)
-    assert minutes_of == pytest.approx(week.review.rows_in_period, rel=0.001)
+    assert minutes_of == pytest.approx(week.review.rows_used, rel=0.001)
 
 
 def test_a_part_of_the_week_counts_its_own_rows_and_agrees_with_the_whole(demo, week):
     start, end = moment("2026-10-22 05:00"), moment("2026-10-22 16:00")
     day = review_plant(demo, start, end)
-    assert day.review.rows_in_period == (end - start) / timedelta(minutes=1)
+    assert day.review.rows_used == (end - start) / timedelta(minutes=1)
+    assert day.review.rows_set_aside == 0  # the line of totals stands after midnight's last row
+    assert day.review.rows_read == day.review.rows_used
+    assert not [one for one in day.review.set_aside if one.signal == "row"]
     inside = week.rows[(week.rows["time"] >= start) & (week.rows["time"] < end)]
     assert day.rows["mass_kg"].sum() == pytest.approx(inside["mass_kg"].sum(), rel=1e-6)
     same = [one for one in week.review.excursions if start <= one.start < end]
     assert [one.start for one in day.review.excursions] == [one.start for one in same]
+
+
+def test_rows_set_aside_fall_into_one_day_each(demo, week):
+    told = truth()["files"]
+    of_log = [one for one in week.reports if one.kind == "plant_log"]
+    for day in schedule.DAYS:
+        start = moment(f"{day} 00:00")
+        lasting = 25 if day == "2026-10-25" else 24  # the clocks went back on the Sunday
+        rows = [
+            row
+            for report in of_log
+            for row in report.set_aside_between(start, start + timedelta(hours=lasting))
+        ]
+        assert len(rows) == len(told[f"plant_{day}.csv"]["set_aside"])
+    assert week.review.rows_set_aside == sum(len(one["set_aside"]) for one in told.values())
+    assert week.review.rows_read == sum(one["rows_read"] for one in told.values())
+
+
+def test_tonnes_without_advice_say_why(week):
+    review = week.review
+    assert sum(one.tonnes for one in review.no_advice) == pytest.approx(review.no_advice_tonnes)
+    most = review.no_advice[0]
+    assert most.mix == "SMA10" and "clashes with" in most.why
+
+
+def test_the_load_out_thermometer_that_reads_low_is_suspected(week):
+    since = moment(schedule.LOAD_OUT_OFFSET_K[0])
+    named = [one for one in week.review.excursions if one.cause == "load-out thermometer"]
+    assert named and all(one.start >= since for one in named)
 
 
 def test_a_log_read_before_gives_the_same_review(demo, week):

@@ -371,7 +371,6 @@ def review(start: datetime = WEEK, end: datetime = WEEK + timedelta(days=7)) -> 
         rows_read=10_080,
         rows_used=9_412,
         rows_set_aside=668,
-        rows_in_period=9_412,
         set_aside=(
             SetAside("stuck", "silo_1_c", 312, start + timedelta(2), start + timedelta(3)),
             SetAside("empty conveyor", "discharge_c", 344),

@@ -10,13 +10,14 @@ import numpy as np
 import plotly.graph_objects as go
 import pytest
 
-from advisor.figures.bars import cause_bars, cause_shares, mix_bars
+from advisor.figures.bars import cause_bars, mix_bars
 from advisor.figures.drawn import Reading, Trace, verdict_of
 from advisor.figures.heat_path import heat_path, heat_path_words
 from advisor.figures.ink import DARK, LIGHT, contrast
 from advisor.figures.thinning import thinned
 from advisor.figures.trend import outside_masks, trend, trend_words
 from advisor.figures.week_field import days_of, field_words, week_field
+from advisor.review.ranking import cause_shares
 from screens.made_up import EXCURSIONS, NOW, WEEK, ZONE, MadeUpPlant, advice, clashing, review
 
 PLANT = MadeUpPlant()
