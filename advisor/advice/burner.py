@@ -164,8 +164,8 @@ def _is_carried(operation: Operation) -> bool:
 
 
 def _stack_limits(low_c: float, high_c: float) -> tuple[Limit, Limit]:
-    margin = load_table("stack").row("above water dew point")
-    dew = f"dew point of the gas, worked out; {margin.source}"
+    margin = load_table("stack").row("above water dew point").origin("amount")
+    dew = f"dew point of the gas, worked out; {margin.source} ({margin.how_known})"
     cloth = "rating entered for the plant's cloth"
     return (
         Limit("stack", "low", low_c, "water dew point and margin", "safety", dew, "derived"),

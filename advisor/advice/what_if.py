@@ -15,9 +15,10 @@ from advisor.advice.advise import (
     path_points,
     scatter_k,
 )
-from advisor.advice.burner import stack_rise_of
+from advisor.advice.burner import hot_aggregate_c, most_rap, stack_rise_of
 from advisor.advice.fuel import fuel_called, money_per_j, operation_of
 from advisor.advice.limits import collect_limits
+from advisor.advice.otherwise import Changes, changed_dryer, changed_situation, notes_on
 from advisor.advice.path import PathDraws, rolling_times_s
 from advisor.advice.result import Advice, PathPoint
 from advisor.advice.situation import Situation
@@ -34,46 +35,13 @@ from advisor.advice.wastes import (
 from advisor.dryer import (
     HeatBalance,
     HeatChange,
-    Operation,
     at_discharge,
     fume_growth,
     heat_change,
     money_per_gross_j,
-    with_air_ratio,
-    with_fuel,
 )
-from advisor.errors import FaultyInput, MissingInput
+from advisor.errors import MissingInput
 from advisor.sampling import Draws, quantile, share_true
-from advisor.settings.faults import nearest
-from advisor.settings.mixes import Additive
-from advisor.settings.plant import Price
-from advisor.settings.tables import Row, load_table
-
-
-@dataclass(frozen=True)
-class Changes:
-    """What is done otherwise; None and 0 leave a thing as it is.
-
-    ``cooler_k``: discharge set lower [K]; None takes the advised target of the changed plant.
-    ``drier``: water taken off the stone, of dry mass [1], below 0 for wetter; ``pile``: a row of
-    config/stockpiles.yaml, whose stone is drier by what stands there; ``fuel``: a row of
-    config/fuels.yaml and ``price`` what it costs; ``air_ratio``: all air over the air just needed
-    [1]; ``rap_share``: of mix [1]; ``additive``: a row of config/modifiers.yaml with an offset;
-    ``haul_s`` [s], ``wind_ms`` [m/s], ``air_c`` [C] and ``lift_m`` [m] in place of what they are.
-    """
-
-    cooler_k: float | None = None
-    drier: float = 0.0
-    pile: str | None = None
-    fuel: str | None = None
-    price: Price | None = None
-    air_ratio: float | None = None
-    rap_share: float | None = None
-    additive: str | None = None
-    haul_s: float | None = None
-    wind_ms: float | None = None
-    air_c: float | None = None
-    lift_m: float | None = None
 
 
 @dataclass(frozen=True)
@@ -97,7 +65,9 @@ class Way:
 
     ``above_low_k``: distance of the discharge from the lowest allowed [K], below 0 where it is too
     cold; ``kept``: share of the mix that keeps every low bound, scatter and doubts included [1];
-    both None where there is no window. ``parts``: where the fuel's gross heat goes [kWh/t].
+    both None where there is no window. ``aggregate_c``: dried virgin aggregate where it meets RAP
+    or mixer [C] and ``most_rap``: RAP it could carry at the dryer's limit [1], None where nothing
+    cold meets it. ``parts``: where the fuel's gross heat goes [kWh/t].
     """
 
     advice: Advice
@@ -109,6 +79,8 @@ class Way:
     arrives_c: float
     rolling_min: Three
     path: tuple[PathPoint, ...]
+    aggregate_c: float | None = None
+    most_rap: float | None = None
 
 
 @dataclass(frozen=True)
@@ -135,7 +107,7 @@ def what_if(
     """
     if situation.missing:
         raise MissingInput.of("no-advice", " ".join(situation.missing), "Enter it first.")
-    changed = [_changed(situation, one) for one in changes]
+    changed = [changed_situation(situation, one) for one in changes]
     draws = Draws(draw_count)
     every = [situation, *changed]
     ways = [
@@ -174,6 +146,7 @@ class _Drawn:
         """How it runs at ``discharge_c`` [C]."""
         window = self.advice.setpoint("discharge")
         arriving = self.path.legs["delivery"].at_point(discharge_c)
+        carried = hot_aggregate_c(self.situation, np.array([discharge_c]))
         rolling = rolling_times_s(self.path, arriving, CRITERION) / 60.0
         return Way(
             advice=self.advice,
@@ -192,6 +165,8 @@ class _Drawn:
                 float(quantile(rolling, 0.95)),
             ),
             path=self._path(discharge_c) if window else (),
+            aggregate_c=None if carried is None else float(carried[0]),
+            most_rap=most_rap(self.situation, discharge_c),
         )
 
     def _kept(self, discharge_c: float) -> float:
@@ -218,101 +193,20 @@ class _Drawn:
         return path_points(moved, self.path, self.situation)
 
 
-def _changed(situation: Situation, changes: Changes) -> Situation:
-    """The situation with its mix, stone, haul and weather changed."""
-    mix, job, weather = situation.mix, situation.job, situation.weather
-    if changes.rap_share is not None:
-        if mix.rap is None:
-            raise FaultyInput.of(
-                "no-rap", f"The mix {mix.code} has no RAP.", "Choose a mix with RAP.", field="rap"
-            )
-        mix = mix.model_copy(
-            update={"rap": mix.rap.model_copy(update={"share": changes.rap_share})}
-        )
-    if changes.additive is not None:
-        mix = mix.model_copy(update={"additive": _additive(changes.additive)})
-    if changes.haul_s is not None:
-        job = job.model_copy(update={"haul": job.haul.model_copy(update={"time": changes.haul_s})})
-    if changes.lift_m is not None:
-        job = job.model_copy(update={"lift": changes.lift_m})
-    if weather is not None and changes.wind_ms is not None:
-        weather = replace(weather, wind_ms=changes.wind_ms)
-    if weather is not None and changes.air_c is not None:
-        # The air is taken to stay as dry as it is: its dew point moves along.
-        dew_c = weather.dew_point_c + changes.air_c - weather.air_c
-        weather = replace(weather, air_c=changes.air_c, dew_point_c=dew_c)
-    off = changes.drier + (_pile(changes.pile)["drier"] if changes.pile is not None else 0.0)
-    moisture = situation.moisture - off
-    if moisture < 0.0:
-        raise FaultyInput.of(
-            "drier-than-dry",
-            f"The stone holds {situation.moisture:.1%} of water; {off:.1%} cannot be taken off.",
-            f"Give at most {100.0 * situation.moisture:.1f} %.",
-            field="drier",
-        )
-    return replace(situation, mix=mix, job=job, weather=weather, moisture=moisture)
-
-
-def piles() -> tuple[str, ...]:
-    """Names of the ways to keep a stockpile drier."""
-    return tuple(str(row["name"]) for row in load_table("stockpiles").rows)
-
-
-def _pile(name: str) -> Row:
-    if name not in piles():
-        raise FaultyInput.of(
-            "unknown-pile",
-            f"'{name}' is no way to keep a stockpile that is known here.",
-            nearest(name, piles()),
-            field="pile",
-            value=name,
-        )
-    return load_table("stockpiles").row(name)
-
-
-def additives() -> tuple[str, ...]:
-    """Names of the additives that let a mix be made cooler by an offset."""
-    return tuple(str(row["name"]) for row in load_table("modifiers").rows if _has_offset(row))
-
-
-def _has_offset(row: Row) -> bool:
-    return row.get("offset_high") is not None and row["kind"] in ("surfactant", "foam")
-
-
-def _additive(name: str) -> Additive:
-    if name not in additives():
-        raise FaultyInput.of(
-            "unknown-additive",
-            f"'{name}' is no additive that lets a mix be made cooler.",
-            nearest(name, additives()),
-            field="additive",
-            value=name,
-        )
-    row = load_table("modifiers").row(name)
-    return Additive.model_validate(
-        {
-            "kind": row["kind"],
-            "offset_low": f"{row['offset_low']:g} K",
-            "offset_high": f"{row['offset_high']:g} K",
-            "source": row.origin("offset_high").source,
-        }
-    )
-
-
 def _compared(
     before: _Drawn, after: _Drawn, changes: Changes, from_c: float, to_c: float
 ) -> WhatIf:
     dryer = before.situation.facts.folder.plant.dryer
     rise = stack_rise_of(dryer.kind)
     base = operation_of(before.situation, from_c)
-    other = _other_dryer(operation_of(after.situation, from_c), changes)
+    other = changed_dryer(operation_of(after.situation, from_c), changes)
     moved = [
         heat_change(base, at_discharge(other, to_c, one))
         for one in (rise.low, rise.central, rise.high)
     ]
     least, central, most = sorted(-float(one.gross_j_kg) for one in moved)
     saved = doubted(central, central - least, most - central)
-    notes = _notes(changes)
+    notes = notes_on(changes)
     clash = after.advice.clash
     if clash:
         notes.append(f"No safe window: {clash.lower.name} clashes with {clash.upper.name}.")
@@ -324,34 +218,6 @@ def _compared(
         oxidation_of_before=oxidation_of(to_c, from_c),
         notes=tuple(notes),
     )
-
-
-def _other_dryer(operation: Operation, changes: Changes) -> Operation:
-    if changes.fuel is not None:
-        operation = with_fuel(operation, fuel_called(changes.fuel))
-    if changes.air_ratio is not None:
-        operation = with_air_ratio(operation, changes.air_ratio)
-    return operation
-
-
-def _notes(changes: Changes) -> list[str]:
-    """What to know of a change before its numbers are believed."""
-    notes = []
-    if changes.pile is not None:
-        row = _pile(changes.pile)
-        origin = row.origin("drier")
-        notes.append(
-            f"All stone is taken to be {row['drier']:.1%} drier from a {changes.pile} pile: "
-            f"{origin.source} ({origin.how_known})."
-        )
-    if changes.fuel is not None and changes.price is None:
-        notes.append(f"The price of {changes.fuel} is not known here: no money is told.")
-    if changes.air_ratio is not None:
-        notes.append(
-            "Air that leaks in behind the dryer costs the fan, not the fuel: for that part nothing "
-            "is saved."
-        )
-    return notes
 
 
 def _saved(situation: Situation, saved_j_kg: Three, change: HeatChange, changes: Changes) -> Saved:

@@ -11,8 +11,9 @@ import click
 from advisor.cli.asked import Asked, json_option, plant_argument, us_option
 
 if TYPE_CHECKING:
+    from advisor.advice.otherwise import Changes
     from advisor.advice.wastes import Wastes
-    from advisor.advice.what_if import Changes, WhatIf
+    from advisor.advice.what_if import WhatIf
     from advisor.settings.plant import Price
     from advisor.units import UnitSystem
 
@@ -46,6 +47,14 @@ if TYPE_CHECKING:
 @click.option(
     "--rap-share", type=Asked("fraction"), metavar="SHARE", help="RAP in the mix: '30 %'."
 )
+@click.option(
+    "--rap-moisture", type=Asked("fraction"), metavar="SHARE", help="Water in it, of dry mass."
+)
+@click.option(
+    "--rap-added",
+    type=click.Choice(["collar", "mixer", "with the stone"]),
+    help="Where it is added.",
+)
 @click.option("--additive", metavar="NAME", help="surfactant or foam, of config/modifiers.yaml.")
 @us_option
 @json_option
@@ -60,6 +69,8 @@ def what_if(
     price: tuple[str, str] | None,
     air_ratio: float | None,
     rap_share: float | None,
+    rap_moisture: float | None,
+    rap_added: str | None,
     additive: str | None,
     units: UnitSystem,
     as_json: bool,
@@ -74,12 +85,13 @@ def what_if(
       advisor what-if demo_plant
       advisor what-if demo_plant --job J01 --additive surfactant
       advisor what-if demo_plant --cooler "10 C" --drier "1 %"
+      advisor what-if demo_plant --job J01 --rap-share "30 %" --rap-moisture "5 %"
       advisor what-if demo_plant --fuel "distillate oil" --price 0.85 L
     """
     from advisor.advice.open_plant import moment_now, open_plant
+    from advisor.advice.otherwise import Changes
     from advisor.advice.situation import gather_situation
     from advisor.advice.wastes import wastes_at
-    from advisor.advice.what_if import Changes
     from advisor.advice.what_if import what_if as compared
     from advisor.cli.output import print_json
 
@@ -91,6 +103,8 @@ def what_if(
         price=_price(price),
         air_ratio=air_ratio,
         rap_share=rap_share,
+        rap_moisture=rap_moisture,
+        rap_added=rap_added,
         additive=additive,
     )
     if asked != Changes() and additive is None and cooler is None:
@@ -134,7 +148,7 @@ def _price(written: tuple[str, str] | None) -> Price | None:
 
 def _usual(air_ratio: float) -> list[Changes]:
     """The ways a plant can save that are most often asked about."""
-    from advisor.advice.what_if import Changes, additives, piles
+    from advisor.advice.otherwise import Changes, additives, piles
 
     return [
         Changes(cooler_k=5.0),
@@ -182,6 +196,7 @@ def _print(wanted: list[Changes], found: list[WhatIf], costs: Wastes, units: Uni
             for one, each in zip(wanted, found, strict=True)
         ],
     )
+    _print_aggregate(wanted, found, units)
     notes: dict[str, None] = {}
     for each in found:
         for note in each.notes:
@@ -196,6 +211,27 @@ def _print(wanted: list[Changes], found: list[WhatIf], costs: Wastes, units: Uni
         "mix design decide. Fume by AP-42 section 11.1 (from memory); oxidation by activation "
         "energies measured below 100 C."
     )
+
+
+def _print_aggregate(wanted: list[Changes], found: list[WhatIf], units: UnitSystem) -> None:
+    """How hot the virgin aggregate gets, where RAP or a mixer asks something of it."""
+    from advisor.cli.output import print_table
+    from advisor.units import shown
+
+    ways = [("as advised", found[0].before)]
+    ways += [(_words(one, units), each.after) for one, each in zip(wanted, found, strict=True)]
+    rows = [
+        (
+            name,
+            shown(way.aggregate_c, "temperature", units),
+            "" if way.most_rap is None else f"{way.most_rap:.0%}",
+        )
+        for name, way in ways
+        if way.aggregate_c is not None
+    ]
+    if rows:
+        click.echo("")
+        print_table(("what if", "virgin aggregate", "RAP it could carry at the limit"), rows)
 
 
 def _print_wastes(costs: Wastes, units: UnitSystem) -> None:
@@ -283,12 +319,19 @@ def _words(one: Changes, units: UnitSystem) -> str:
         told.append(f"stone {abs(one.drier):.1%} {'drier' if one.drier > 0 else 'wetter'}")
     if one.pile:
         told.append(f"{one.pile} pile")
+    if one.price:
+        told.append(f"fuel at {one.price.amount:g} per {one.price.per}")
     if one.fuel:
         told.append(one.fuel)
     if one.air_ratio is not None:
         told.append(f"air ratio {one.air_ratio:g}")
     if one.rap_share is not None:
         told.append(f"RAP {one.rap_share:.0%}")
+    if one.rap_moisture is not None:
+        told.append(f"RAP at {one.rap_moisture:.1%} moisture")
+    if one.rap_added:
+        where = "" if one.rap_added == "with the stone" else "at the "
+        told.append(f"RAP {where}{one.rap_added}")
     if one.additive:
         told.append(one.additive)
     return ", ".join(told) or "as advised"

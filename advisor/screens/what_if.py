@@ -7,8 +7,8 @@ from typing import Any
 
 from dash import Dash, Input, Output, State, dcc, html
 
+from advisor.advice.otherwise import Changes, additives
 from advisor.advice.wastes import wastes_at
-from advisor.advice.what_if import Changes, additives
 from advisor.advice.what_if import what_if as compared
 from advisor.errors import AdvisorError
 from advisor.figures.base import STILL, blank

@@ -8,9 +8,10 @@ from typing import Any
 
 from dash import html
 
+from advisor.advice.otherwise import Changes
 from advisor.advice.situation import Situation
 from advisor.advice.wastes import Wastes
-from advisor.advice.what_if import Changes, WhatIf
+from advisor.advice.what_if import WhatIf
 from advisor.screens.words import temperature_words
 from advisor.units import UnitSystem, from_si, shown, shown_number, shown_unit, to_si
 

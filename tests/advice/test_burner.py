@@ -62,7 +62,8 @@ def test_the_stack_lies_between_dew_point_and_cloth_and_follows_the_mix(demo):
     assert low.value_c == pytest.approx(burner.dew_point_c + 25.0)
     assert high.value_c == pytest.approx(float(demo.folder.plant.dryer.cloth_max))
     assert burner.stack_low_c <= burner.stack_c <= burner.stack_high_c
-    assert low.source and high.source and burner.acid_dew_point_c is None
+    assert "20 to 30 K above the water dew point" in low.source and "from memory" in low.source
+    assert high.source and burner.acid_dew_point_c is None
 
 
 def test_a_cold_stack_and_a_small_burner_are_told(own_demo):

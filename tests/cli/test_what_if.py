@@ -106,6 +106,24 @@ def test_each_waste_says_from_what_and_how_sure_and_none_is_another(ask):
     assert found["fume_of_kelvin"] > 1.0 and found["oxidation_of_kelvin"][0] > 1.0
 
 
+def test_more_and_wetter_rap_asks_for_hotter_aggregate(ask):
+    def way(*words):
+        return ways(ask("--job", "J01", *words, "--json"))["ways"][0]
+
+    more, wetter = way("--rap-share", "30 %"), way("--rap-moisture", "6 %")
+    now = more["before"]
+    assert more["after"]["aggregate_c"] > now["aggregate_c"] + 30.0
+    # near 8 C for each percent of RAP moisture at a fifth of RAP; 1.9 % more here
+    assert wetter["after"]["aggregate_c"] - now["aggregate_c"] == pytest.approx(15.0, abs=2.0)
+    assert more["after"]["most_rap"] == pytest.approx(now["most_rap"], rel=1e-9)
+    assert wetter["after"]["most_rap"] < now["most_rap"]
+    assert wetter["saved"]["gross_kwh_t"][1] < 0
+    # heated by the gas with the stone, it asks nothing of the aggregate
+    assert way("--rap-added", "with the stone")["after"]["aggregate_c"] is None
+    _, out, _ = ask("--job", "J01", "--rap-share", "30 %")
+    assert "virgin aggregate" in out
+
+
 def test_several_changes_are_done_together(ask):
     (both,) = ways(ask("--cooler", "5 C", "--drier", "1 %", "--json"))["ways"]
     (cool,) = ways(ask("--cooler", "5 C", "--json"))["ways"]
@@ -151,6 +169,8 @@ def test_with_nothing_named_the_usual_ways_are_a_table(ask):
         (["--price", "1", "bucket"], ["bucket", "kWh gross"]),
         (["--air-ratio", "0.5"], ["air_ratio", "0.5"]),
         (["--rap-share", "20 %"], ["AC14", "no RAP"]),
+        (["--job", "J01", "--rap-share", "98 %"], ["AC20R", "98%"]),
+        (["--job", "J01", "--rap-added", "tower"], ["tower", "collar"]),
         (["--job", "J09"], ["J09"]),
         (["--job", "J08"], ["no safe window"]),
     ],
