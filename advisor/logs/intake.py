@@ -27,7 +27,8 @@ from advisor.logs.mapping import SIGNALS_FILE, check_mapping
 from advisor.logs.report import IntakeReport, SetAsideRow, UnreadCells
 from advisor.logs.rows import TextColumn, TextRows, read_rows
 from advisor.logs.signals import SHAPES, is_switch, is_text, signal_quantity
-from advisor.logs.text import plain_text
+from advisor.logs.text import PlainText, plain_text
+from advisor.logs.workbook import ENCODING, is_workbook, sheets_of
 from advisor.settings.signals import LogSource
 from advisor.units import to_si
 
@@ -37,6 +38,7 @@ _TOTALS = frozenset(
 _FAR_AWAY = np.timedelta64(400, "D")
 _FIRST_TIME, _LAST_TIME = np.datetime64("1990-01-01"), np.datetime64("2100-01-01")
 _NO_TIME = np.datetime64("NaT", "us")
+_ISO_DATE = r"\d{4}-\d\d-\d\d"
 _OFFSET = r"(?:[zZ]|[+-]\d\d(?::?\d\d)?)$"
 
 
@@ -86,12 +88,16 @@ def read_export(path: Path, source: LogSource, plant_zone: str) -> Intake:
 
 def read_export_bytes(raw: bytes, file: str, source: LogSource, plant_zone: str) -> Intake:
     """The export in ``raw``, as read_export; ``file`` is its name in messages."""
-    text = plain_text(raw, file, source.encoding)
     times = [name for name in (source.time.date_column, source.time.column) if name]
     needed = tuple(dict.fromkeys([*times, *source.columns]))
-    layout = find_layout(text, file, needed, (), source.delimiter)
+    if is_workbook(raw):
+        text, layout = _sheet_and_layout(raw, file, needed)
+        source = source.model_copy(update={"decimal": None})  # its numbers are no text
+    else:
+        text = plain_text(raw, file, source.encoding)
+        layout = find_layout(text, file, needed, (), source.delimiter)
     rows = read_rows(text, layout, file)
-    utc, reasons, notes = _times(rows, layout, source, times, plant_zone)
+    utc, reasons, notes = _times(rows, layout, source, times, plant_zone, text.encoding == ENCODING)
     columns, cells = _signals(rows, layout, source, file)
     frame = pd.DataFrame({"time": pd.DatetimeIndex(utc).tz_localize("UTC"), **columns})
     _drop_repeats(frame, rows, reasons, SHAPES[source.kind].key)
@@ -122,6 +128,21 @@ def read_export_bytes(raw: bytes, file: str, source: LogSource, plant_zone: str)
     return Intake(sorted_frame, rows.lines[kept][order], report)
 
 
+def _sheet_and_layout(raw: bytes, file: str, needed: tuple[str, ...]) -> tuple[PlainText, Layout]:
+    """The first sheet of a workbook that holds the columns ``needed``, and its layout."""
+    refused: FaultyInput | None = None
+    for name, text in sheets_of(raw, file):
+        try:
+            layout = find_layout(text, f"{file}, sheet {name}", needed, (), "\t")
+        except FaultyInput as error:
+            refused = refused or error
+            continue
+        return replace(text, notes=(f"Read from sheet {name}.",)), layout
+    raise refused or FaultyInput.of(
+        "file-empty", "The workbook holds no sheet.", "Export it again.", file=file
+    )
+
+
 def _placed_in_time(
     set_aside: list[SetAsideRow], lines: NDArray[np.int64], used: pd.DataFrame
 ) -> list[SetAsideRow]:
@@ -138,7 +159,12 @@ def _placed_in_time(
 
 
 def _times(
-    rows: TextRows, layout: Layout, source: LogSource, names: list[str], plant_zone: str
+    rows: TextRows,
+    layout: Layout,
+    source: LogSource,
+    names: list[str],
+    plant_zone: str,
+    from_workbook: bool,
 ) -> tuple[NDArray[np.datetime64], NDArray[np.object_], list[str]]:
     """UTC of every row, NaT with a reason where there is none; and what was decided on the way."""
     parts = [rows.columns[name].as_array() for name in names]
@@ -152,6 +178,9 @@ def _times(
     shown = np.full(len(texts), _NO_TIME)
     shown[exact] = _read_times(texts[exact], style, utc=True)
     shown[~exact] = _read_times(texts[~exact], style, utc=False)
+    if from_workbook:  # its own dates come as ISO text, however the mapping writes a time
+        own = np.isnat(shown) & texts.str.match(_ISO_DATE).to_numpy(dtype=bool)
+        shown[own] = _read_times(texts[own], "ISO8601", utc=False)
     reasons = np.full(len(texts), "", dtype=object)
     headings = {plain_name(layout.header[layout.columns[name]]) for name in names}
     for place in np.flatnonzero(np.isnat(shown)):
