@@ -128,6 +128,9 @@ MOISTURE_TRUE = (
 CONVEYOR_UA_WK = 430.0
 SILO_UA_WK = {1: 60.0, 2: 55.0}
 MIX_JKGK = 1000.0
+# Burner at full load, net; the share of its heat that mix and steam keep at 155 C, and how that
+# share falls as mix and with it the gas in the stack get hotter.
+BURNER_NET_W, HEAT_KEPT, HEAT_KEPT_PER_K = 24.6e6, 0.86, 0.00025
 CONE_FIRST_LOAD_K = 8.0
 TRUCK_LOSS_K = {"bare": (12.6, 0.72), "tarpaulin": (10.2, 0.74), "insulated": (2.0, 0.87)}
 LOAD_OUT_OFFSET_K = ("2026-10-22 00:00", -4.0)  # the load-out sensor reads low from Thursday on

@@ -160,8 +160,16 @@ def burner(plant: Plant, at: datetime, run: demo.Run | None) -> float:
     _, wet = moisture(at)
     if between(at, *demo.HOT_HOUR[:2]):
         wet = moisture(moment(demo.HOT_HOUR[0]) - MINUTE)[1]  # nobody turned it down
-    heat_w = run.rate_th / 3.6 * (980.0 * (plant.base_c - air_c(at)) + 2.62e6 * wet * 0.95)
-    return min(1.0, heat_w / 0.86 / 24.6e6)
+    return min(1.0, burner_w(run.rate_th, plant.base_c, air_c(at), wet) / demo.BURNER_NET_W)
+
+
+def burner_w(rate_th: float, mix_c: float, air: float, wet: float) -> float:
+    """Net heat of the burner [W]: stone and binder to ``mix_c``, water off as steam, the rest lost.
+
+    Hotter mix leaves hotter gas, so that a smaller part of the heat is kept.
+    """
+    kept = demo.HEAT_KEPT - demo.HEAT_KEPT_PER_K * (mix_c - 155.0)
+    return rate_th / 3.6 * (980.0 * (mix_c - air) + 2.62e6 * wet * 0.95) / kept
 
 
 def step_stack(plant: Plant, at: datetime, run: demo.Run | None, load: float) -> None:

@@ -12,6 +12,7 @@ from advisor.errors import MissingInput
 from advisor.logs import read_logs
 from advisor.review.plant import log_span, review_plant
 from demo_schedule import moment
+from make_demo_plant import air_c, burner_w
 from truth.known import faults, minutes, truth
 
 
@@ -89,6 +90,26 @@ def test_excess_heat_agrees_with_the_true_temperatures(week):
     steady = rows["state"].isin(["production"]).to_numpy() & same
     wanted = float(np.nansum(np.where(steady, over * rows["mass_kg"], 0.0)) / 1000.0)
     assert week.review.waste.excess_tk == pytest.approx(wanted, rel=0.06)
+
+
+def test_fuel_too_much_agrees_with_the_burner_of_the_simulator(week):
+    """What its burner would have saved with the same tonnes at the edge of their window."""
+    known = minutes()
+    rows = week.rows[week.rows["state"] == "production"]
+    rows = rows[(rows["over_k"] > 0).to_numpy()]
+    place = np.searchsorted(known["time_s"], rows["time_s"].to_numpy())
+    saved_j = 0.0
+    for one, wet in zip(rows.itertuples(), known["moisture"][place], strict=True):
+        air = air_c(one.time.to_pydatetime())
+        hot, edge = (
+            burner_w(3.6 * one.mass_kg / one.lasting_s, at, air, wet)
+            for at in (one.smooth_c, one.discharge_high_c)
+        )
+        saved_j += (hot - edge) * one.lasting_s
+    gross_kwh = 1.11 * saved_j / 3.6e6  # gross over net heat of methane: 55.5 over 50.0 MJ/kg
+    fuel = week.review.waste.fuel_kwh
+    assert fuel.low < gross_kwh < fuel.high
+    assert fuel.middle == pytest.approx(gross_kwh, rel=0.15)
 
 
 def test_readings_of_broken_sensors_are_counted_as_set_aside_and_heat_nobody(week):
