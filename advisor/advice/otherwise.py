@@ -7,11 +7,14 @@ from dataclasses import dataclass, replace
 from advisor.advice.fuel import fuel_called
 from advisor.advice.situation import Situation
 from advisor.dryer import Operation, with_air_ratio, with_fuel
-from advisor.errors import FaultyInput
+from advisor.errors import Fault, FaultyInput, raise_if_any
 from advisor.settings.faults import nearest
 from advisor.settings.mixes import Additive, Mix
 from advisor.settings.plant import Price
 from advisor.settings.tables import Row, load_table
+
+_DISCHARGE_C = (80.0, 220.0)
+_AIR_RATIO = (1.0, 6.0)  # as for the plant's own dryer
 
 
 @dataclass(frozen=True)
@@ -105,6 +108,35 @@ def _with_rap(mix: Mix, changes: Changes) -> Mix:
             field="rap_share",
         )
     return mix.model_copy(update={"rap": rap})
+
+
+def refuse_impossible(changes: Changes, discharge_c: float) -> None:
+    """Refuse degrees and air that no dryer can run with, for a mix set at ``discharge_c`` [C]."""
+    faults = []
+    least_c, most_c = _DISCHARGE_C
+    cooler = changes.cooler_k
+    if cooler is not None and not least_c <= discharge_c - cooler <= most_c:
+        faults.append(
+            Fault(
+                "out-of-range",
+                f"{cooler:g} K cooler than {discharge_c:.0f} C is no mix of asphalt.",
+                f"Give what leaves the discharge between {least_c:g} and {most_c:g} C.",
+                field="cooler",
+                value=f"{cooler:g}",
+            )
+        )
+    least, most = _AIR_RATIO
+    if changes.air_ratio is not None and not least <= changes.air_ratio <= most:
+        faults.append(
+            Fault(
+                "out-of-range",
+                f"An air ratio of {changes.air_ratio:g} is not between {least:g} and {most:g}.",
+                "Give all air, leaks included, over the air the fuel needs.",
+                field="air_ratio",
+                value=f"{changes.air_ratio:g}",
+            )
+        )
+    raise_if_any(faults)
 
 
 def piles() -> tuple[str, ...]:

@@ -18,7 +18,13 @@ from advisor.advice.advise import (
 from advisor.advice.burner import hot_aggregate_c, most_rap, stack_rise_of
 from advisor.advice.fuel import fuel_called, money_per_j, operation_of
 from advisor.advice.limits import collect_limits
-from advisor.advice.otherwise import Changes, changed_dryer, changed_situation, notes_on
+from advisor.advice.otherwise import (
+    Changes,
+    changed_dryer,
+    changed_situation,
+    notes_on,
+    refuse_impossible,
+)
 from advisor.advice.path import PathDraws, rolling_times_s
 from advisor.advice.result import Advice, PathPoint
 from advisor.advice.situation import Situation
@@ -125,6 +131,7 @@ def what_if(
         )
     found = []
     for one, after in zip(changes, ways[1:], strict=True):
+        refuse_impossible(one, start.target_c)
         target = after.advice.setpoint("discharge")
         if one.cooler_k is not None:
             discharge = start.target_c - one.cooler_k

@@ -314,7 +314,8 @@ def _words(one: Changes, units: UnitSystem) -> str:
 
     told = []
     if one.cooler_k:
-        told.append(f"{shown(one.cooler_k, 'temperature_delta', units, 0)} cooler")
+        degrees = shown(abs(one.cooler_k), "temperature_delta", units, 0)
+        told.append(f"{degrees} {'cooler' if one.cooler_k > 0 else 'hotter'}")
     if one.drier:
         told.append(f"stone {abs(one.drier):.1%} {'drier' if one.drier > 0 else 'wetter'}")
     if one.pile:

@@ -147,6 +147,8 @@ def test_with_nothing_named_the_usual_ways_are_a_table(ask):
         assert words in out
     for words in ("overheating", "one degree Celsius too hot", "one percent of the dry stone"):
         assert words in out
+    _, hotter, _ = ask("--cooler", "-5 C")
+    assert "5 °C hotter" in hotter and "-5 °C" not in hotter
     _, us, _ = ask("--us")
     assert (
         "18 °F cooler" in us
@@ -161,6 +163,8 @@ def test_with_nothing_named_the_usual_ways_are_a_table(ask):
     [
         (["--cooler", "10"], ["--cooler", "no unit"]),
         (["--cooler", "ten C"], ["--cooler", "ten C"]),
+        (["--cooler", "500 C"], ["cooler", "80", "220"]),
+        (["--air-ratio", "nan"], ["air_ratio", "1 and 6"]),
         (["--drier", "9 %"], ["drier", "4.5 %"]),
         (["--fuel", "coal"], ["coal", "natural gas"]),
         (["--additive", "fom"], ["fom", "Did you mean 'foam'"]),
