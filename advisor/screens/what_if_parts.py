@@ -160,6 +160,9 @@ def numbers(found: WhatIf, changed: bool, units: UnitSystem) -> Any:
     def rolling(way: Any) -> str:
         return f"{way.rolling_min[0]:.0f} to {way.rolling_min[2]:.0f} min"
 
+    def aggregate(way: Any) -> str:
+        return "" if way.aggregate_c is None else temperature_words(way.aggregate_c, units)
+
     slow, fast = (f"{one - 1.0:+.0%}" for one in found.oxidation_of_before)
     rows = [
         ("Window at discharge", window(before), window(after)),
@@ -173,11 +176,12 @@ def numbers(found: WhatIf, changed: bool, units: UnitSystem) -> Any:
             temperature_words(before.arrives_c, units),
             temperature_words(after.arrives_c, units),
         ),
+        ("Virgin aggregate", aggregate(before), aggregate(after)),
         ("Time to roll", rolling(before), rolling(after)),
         ("Fuel, gross", _heat(before.gross_kwh_t, units, 1), _heat(after.gross_kwh_t, units, 1)),
         ("CO2 saved", "", _carbon(saved.co2_kg_t, units)),
         ("Fume at load-out", "", f"{found.fume_of_before - 1.0:+.0%}"),
-        ("Binder oxidises", "", f"{slow} to {fast}"),
+        ("Binder oxidises", "", slow if slow == fast else f"{slow} to {fast}"),
     ]
     return [
         html.Table(
@@ -201,7 +205,7 @@ def numbers(found: WhatIf, changed: bool, units: UnitSystem) -> Any:
                             ]
                         )
                         for name, now, then in rows
-                        if now or changed
+                        if now or (then and changed)
                     ]
                 ),
             ]

@@ -76,12 +76,19 @@ def test_wetter_stone_costs_and_a_longer_haul_moves_the_path(open_page, demo_add
 
 
 @pytest.mark.browser
-def test_a_job_with_rap_has_its_slider_and_one_without_a_window_says_so(open_page, demo_address):
+def test_a_job_with_rap_has_its_slider_and_one_without_a_window_says_so(
+    open_page, demo_address, demo_folder
+):
     page = open_what_if(open_page, demo_address)
     expect(page.locator("#what-if-rap-place")).to_be_hidden()
     page.locator("#what-if-job").click()
     page.locator(".dash-dropdown-option", has_text="J01").click()
     expect(page.locator("#what-if-rap-place")).to_be_visible(timeout=WAIT)
+    set_to(page, "rap", 30)
+    way = answered(demo_folder, "--job", "J01", "--rap-share", "30 %")
+    expect(page.locator(".numbers")).to_contain_text(
+        f"{way['after']['aggregate_c']:.0f} °C", timeout=WAIT
+    )
     page.locator("#what-if-job").click()
     page.locator(".dash-dropdown-option", has_text="J08").click()
     expect(page.locator(".answer")).to_contain_text("no safe window", timeout=WAIT)
