@@ -12,6 +12,7 @@ import io
 import posixpath
 import re
 import zipfile
+import zlib
 from collections.abc import Iterator
 from dataclasses import dataclass
 from datetime import datetime, timedelta
@@ -31,6 +32,11 @@ _PERCENT_FORMATS = frozenset((9, 10))
 _DAY_ZERO = datetime.fromisoformat("1899-12-30")
 _DAY_ZERO_1904 = datetime.fromisoformat("1904-01-01")
 _NOT_SHOWN = re.compile(r'"[^"]*"|\[[^\]]*\]|\\.')  # words, colours and single letters in a format
+# All that a damaged archive or a damaged part of one is known to raise.
+_BROKEN = (
+    zipfile.BadZipFile, zlib.error, ElementTree.ParseError, EOFError, LookupError, OSError,
+    OverflowError, RuntimeError, ValueError,
+)  # fmt: skip
 _PLACE = re.compile(r"([A-Z]+)(\d+)")
 
 
@@ -64,7 +70,7 @@ def sheets_of(raw: bytes, file: str) -> Iterator[tuple[str, PlainText]]:
             styles = _styles(parts)
             for name, part in _sheet_parts(parts):
                 yield name, _sheet_text(parts.read(part), strings, styles)
-    except (zipfile.BadZipFile, KeyError, ElementTree.ParseError, EOFError, ValueError) as error:
+    except _BROKEN as error:
         raise _faulty(file, f"The workbook cannot be read: {error}.") from error
 
 
@@ -91,8 +97,8 @@ def _sheet_parts(parts: zipfile.ZipFile) -> list[tuple[str, str]]:
     }
     found = []
     for sheet in _tree(parts.read("xl/workbook.xml")).iter("sheet"):
-        link = next(value for key, value in sheet.attrib.items() if key.endswith("}id"))
-        target = targets[link]
+        links = [value for key, value in sheet.attrib.items() if key.endswith("}id")]
+        target = targets[links[0]]
         part = target.lstrip("/") if target.startswith("/") else posixpath.join("xl", target)
         if part in parts.namelist() and "worksheets" in part:
             found.append((sheet.get("name", ""), part))
