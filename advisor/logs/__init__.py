@@ -9,12 +9,15 @@ import importlib
 from typing import Any
 
 _HOME = {
+    "ClockOffset": "ticket_clock",
     "Intake": "intake",
     "IntakeReport": "report",
     "MARKS": "cleaning",
     "PlantLog": "plant_log",
     "SetAsideRow": "report",
     "believed": "cleaning",
+    "clock_offset": "ticket_clock",
+    "clock_rules": "ticket_clock",
     "mark_faults": "cleaning",
     "read_export": "intake",
     "read_forecast": "weather_forecast",

@@ -14,7 +14,7 @@ from advisor.advice.fuel import fuel_called, kelvin_too_much, money_per_j
 from advisor.advice.situation import gather_situation
 from advisor.advice.timeline import TimelineRow, build_timeline, timeline_frame
 from advisor.errors import AdvisorError, MissingInput
-from advisor.logs import IntakeReport, PlantLog, read_logs
+from advisor.logs import IntakeReport, PlantLog, clock_offset, clock_rules, read_logs
 from advisor.review.causes import CauseRules
 from advisor.review.kernel import Findings, ReviewRules, review_rows, trace_rows
 from advisor.review.loads import Road, judged_loads, load_excursions
@@ -198,9 +198,23 @@ def _assembled(
         start_up_waste=findings.start_up_waste,
         currency=plant.currency,
         sentence=review_sentence(findings, plant.currency),
-        cautions=(caution_text("C14"),),
+        cautions=(caution_text("C14"), *_clock_words(log)),
         no_advice=findings.no_advice,
     )
+
+
+def _clock_words(log: PlantLog) -> tuple[str, ...]:
+    """One sentence where the tickets' clock is plainly not that of the plant log."""
+    found = clock_offset(log.frame, log.tickets)
+    if found is None or abs(found.offset_s) < clock_rules().least_s:
+        return ()
+    words = (
+        f"The clock of the tickets runs {abs(found.offset_s) / 60.0:.0f} min "
+        f"{'ahead of' if found.offset_s > 0 else 'behind'} that of the plant log, give or take "
+        f"{found.doubt_s / 60.0:.0f} min: so set, {found.fits} of {found.loads} loads fit what "
+        "left the silos. Loads are judged here by the time on their ticket. Set the clock right."
+    )
+    return (words,)
 
 
 def _first_and_last(when: list[datetime | None]) -> tuple[datetime | None, datetime | None]:

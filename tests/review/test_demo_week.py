@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from datetime import UTC, timedelta
 
 import numpy as np
@@ -181,6 +182,17 @@ def test_the_load_out_thermometer_that_reads_low_is_suspected(week):
     since = moment(schedule.LOAD_OUT_OFFSET_K[0])
     named = [one for one in week.review.excursions if one.cause == "load-out thermometer"]
     assert named and all(one.start >= since for one in named)
+
+
+def test_tickets_of_a_wrong_clock_are_told_and_not_moved(demo, week):
+    assert not [one for one in week.review.cautions if "clock" in one]
+    log = read_logs(demo.folder)
+    late = log.tickets.assign(time=log.tickets["time"] + timedelta(minutes=11))
+    start = moment("2026-10-19 05:00")
+    found = review_plant(demo, start, start + timedelta(hours=6), log=replace(log, tickets=late))
+    (told,) = [one for one in found.review.cautions if "clock" in one]
+    assert "11 min ahead of that of the plant log" in told
+    assert found.loads["time"].iloc[0] == late["time"].iloc[0]
 
 
 def test_a_log_read_before_gives_the_same_review(demo, week):
