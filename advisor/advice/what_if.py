@@ -43,6 +43,7 @@ from advisor.dryer import (
     HeatChange,
     at_discharge,
     fume_growth,
+    heat_balance,
     heat_change,
     money_per_gross_j,
 )
@@ -111,34 +112,77 @@ def what_if(
     Raises MissingInput where there is no target to compare with, FaultyInput for a change that
     cannot be, naming it.
     """
-    if situation.missing:
-        raise MissingInput.of("no-advice", " ".join(situation.missing), "Enter it first.")
-    changed = [changed_situation(situation, one) for one in changes]
-    draws = Draws(draw_count)
-    every = [situation, *changed]
-    ways = [
-        _Drawn(one, path, draws)
-        for one, path in zip(every, draw_paths(every, draws), strict=True)
-        if path is not None
-    ]
-    before = ways[0]
-    start = before.advice.setpoint("discharge")
-    if start is None:
-        raise MissingInput.of(
-            "no-target",
-            "There is no safe window for this job, so there is no target to compare with.",
-            "Choose another job, or look at the remedies of its advice.",
+    return AsAdvised(situation, draw_count).against(changes)
+
+
+class AsAdvised:
+    """The plant run as advised, with the draws of its heat path, to compare other ways with.
+
+    Raises MissingInput where there is no target to compare with.
+    """
+
+    def __init__(self, situation: Situation, draw_count: int = DRAW_COUNT) -> None:
+        if situation.missing:
+            raise MissingInput.of("no-advice", " ".join(situation.missing), "Enter it first.")
+        self._draws = Draws(draw_count)
+        (self._drawn,) = self._drawn_of([situation])
+        start = self._drawn.advice.setpoint("discharge")
+        if start is None:
+            raise MissingInput.of(
+                "no-target",
+                "There is no safe window for this job, so there is no target to compare with.",
+                "Choose another job, or look at the remedies of its advice.",
+            )
+        self._target_c = start.target_c
+        self._dryer = operation_of(situation, start.target_c)
+        self._way = self._drawn.way(start.target_c, heat_balance(self._dryer))
+
+    def against(self, changes: Sequence[Changes]) -> list[WhatIf]:
+        """Each of ``changes`` beside it; FaultyInput for one that cannot be, naming it."""
+        for one in changes:
+            refuse_impossible(one, self._target_c)
+        situation = self._drawn.situation
+        changed = self._drawn_of([changed_situation(situation, one) for one in changes])
+        found = []
+        for one, after in zip(changes, changed, strict=True):
+            target = after.advice.setpoint("discharge")
+            if one.cooler_k is not None:
+                discharge_c = self._target_c - one.cooler_k
+            else:
+                discharge_c = target.target_c if target else self._target_c
+            found.append(self._compared(after, one, discharge_c))
+        return found
+
+    def _drawn_of(self, situations: list[Situation]) -> list[_Drawn]:
+        paths = draw_paths(situations, self._draws)
+        return [
+            _Drawn(one, path, self._draws)
+            for one, path in zip(situations, paths, strict=True)
+            if path is not None
+        ]
+
+    def _compared(self, after: _Drawn, changes: Changes, to_c: float) -> WhatIf:
+        situation, from_c = self._drawn.situation, self._target_c
+        rise = stack_rise_of(situation.facts.folder.plant.dryer.kind)
+        other = changed_dryer(operation_of(after.situation, from_c), changes)
+        moved = [
+            heat_change(self._dryer, at_discharge(other, to_c, one))
+            for one in (rise.low, rise.central, rise.high)
+        ]
+        least, central, most = sorted(-float(one.gross_j_kg) for one in moved)
+        saved = doubted(central, central - least, most - central)
+        notes = notes_on(changes)
+        clash = after.advice.clash
+        if clash:
+            notes.append(f"No safe window: {clash.lower.name} clashes with {clash.upper.name}.")
+        return WhatIf(
+            before=self._way,
+            after=after.way(to_c, moved[1].after),
+            saved=_saved(situation, three(saved, 1.0), moved[1], changes),
+            fume_of_before=float(fume_growth(to_c, from_c)),
+            oxidation_of_before=oxidation_of(to_c, from_c),
+            notes=tuple(notes),
         )
-    found = []
-    for one, after in zip(changes, ways[1:], strict=True):
-        refuse_impossible(one, start.target_c)
-        target = after.advice.setpoint("discharge")
-        if one.cooler_k is not None:
-            discharge = start.target_c - one.cooler_k
-        else:
-            discharge = target.target_c if target else start.target_c
-        found.append(_compared(before, after, one, start.target_c, discharge))
-    return found
 
 
 class _Drawn:
@@ -198,33 +242,6 @@ class _Drawn:
             if one.point in legs
         ]
         return path_points(moved, self.path, self.situation)
-
-
-def _compared(
-    before: _Drawn, after: _Drawn, changes: Changes, from_c: float, to_c: float
-) -> WhatIf:
-    dryer = before.situation.facts.folder.plant.dryer
-    rise = stack_rise_of(dryer.kind)
-    base = operation_of(before.situation, from_c)
-    other = changed_dryer(operation_of(after.situation, from_c), changes)
-    moved = [
-        heat_change(base, at_discharge(other, to_c, one))
-        for one in (rise.low, rise.central, rise.high)
-    ]
-    least, central, most = sorted(-float(one.gross_j_kg) for one in moved)
-    saved = doubted(central, central - least, most - central)
-    notes = notes_on(changes)
-    clash = after.advice.clash
-    if clash:
-        notes.append(f"No safe window: {clash.lower.name} clashes with {clash.upper.name}.")
-    return WhatIf(
-        before=before.way(from_c, moved[1].before),
-        after=after.way(to_c, moved[1].after),
-        saved=_saved(before.situation, three(saved, 1.0), moved[1], changes),
-        fume_of_before=float(fume_growth(to_c, from_c)),
-        oxidation_of_before=oxidation_of(to_c, from_c),
-        notes=tuple(notes),
-    )
 
 
 def _saved(situation: Situation, saved_j_kg: Three, change: HeatChange, changes: Changes) -> Saved:

@@ -9,7 +9,7 @@ from dash import Dash, Input, Output, State, dcc, html
 
 from advisor.advice.otherwise import Changes, additives
 from advisor.advice.wastes import wastes_at
-from advisor.advice.what_if import what_if as compared
+from advisor.advice.what_if import AsAdvised
 from advisor.errors import AdvisorError
 from advisor.figures.base import STILL, blank
 from advisor.figures.energy import energy_bars, energy_height, energy_words
@@ -222,13 +222,22 @@ def _shown(
     """Every part of the page for what the sliders say."""
     situation = source.situation(job or None, units)
     changes = parts.changes_of(values, additive, situation, units)
-    (found,) = compared(situation, [changes], DRAWS)
+    # Drawn once, since every move of a slider is compared with the same.
+    advised = source.ask(
+        (PAGE, "as advised", job, units), situation.at, lambda _: AsAdvised(situation, DRAWS)
+    )
+    (found,) = advised.against([changes])
+    wastes = source.ask(
+        (PAGE, "wastes", job, units),
+        situation.at,
+        lambda _: wastes_at(situation, found.before.discharge_c),
+    )
     changed = changes != Changes(cooler_k=0.0)
     after = replace(found.after.advice, path=found.after.path)
     return {
         "heading": parts.heading(found, changed, units),
         "table": parts.numbers(found, changed, units),
-        "costs": parts.costs(wastes_at(situation, found.before.discharge_c), units),
+        "costs": parts.costs(wastes, units),
         "path": heat_path(after, (), units, ink, narrow),
         "path-words": heat_path_words(after, (), units),
         "energy": energy_bars(
