@@ -58,8 +58,10 @@ def heat_path(
     if len(path) < 2:
         return note(figure, "No window to draw.", ink)
     limits = _limits_drawn(advice, readings)
-    room = _room(path, readings, limits, units, narrow)
-    _axes(figure, path, room, units, ink, narrow)
+    reach_c = _reach(path, readings, limits)
+    room = _room(path, reach_c, units, narrow)
+    temperature_axis(figure, *reach_c, units, ink)
+    _minutes_axis(figure, path, room, narrow)
     _ribbon(figure, path, units, ink)
     _stations(figure, path, room, ink, narrow)
     found = [(one, place) for one in readings if (place := _place(path, one.point))]
@@ -128,36 +130,31 @@ def _span(path: Sequence[PathPoint], readings: Sequence[Reading]) -> tuple[float
     return min(values), max(values)
 
 
-def _room(
-    path: Sequence[PathPoint],
-    readings: Sequence[Reading],
-    limits: Sequence[Limit],
-    units: UnitSystem,
-    narrow: bool,
-) -> Room:
+def _reach(
+    path: Sequence[PathPoint], readings: Sequence[Reading], limits: Sequence[Limit]
+) -> tuple[float, float]:
+    """Lowest and highest temperature of the figure [C], with some room."""
     low, high = _span(path, readings)
     low = min([low, *(one.value_c for one in limits)])
     high = max([high, *(one.value_c for one in limits)])
     spare = max(3.0, 0.13 * (high - low))
+    return low - spare, high + spare
+
+
+def _room(
+    path: Sequence[PathPoint], reach_c: tuple[float, float], units: UnitSystem, narrow: bool
+) -> Room:
     end = max(path[-1].minutes, 1.0)
     left, right, top, bottom = _MARGIN
     return Room(
         width=(_NARROW if narrow else _WIDTH) - left - right,
         height=_HEIGHT - top - bottom,
         x_range=(-0.015 * end, 1.015 * end),
-        y_range=(temperature(low - spare, units), temperature(high + spare, units)),
+        y_range=(temperature(reach_c[0], units), temperature(reach_c[1], units)),
     )
 
 
-def _axes(
-    figure: go.Figure,
-    path: Sequence[PathPoint],
-    room: Room,
-    units: UnitSystem,
-    ink: Ink,
-    narrow: bool,
-) -> None:
-    temperature_axis(figure, *room.y_range, units, ink)
+def _minutes_axis(figure: go.Figure, path: Sequence[PathPoint], room: Room, narrow: bool) -> None:
     end = max(path[-1].minutes, 1.0)
     most = 5 if narrow else 9
     step = next((one for one in (5, 10, 20, 30, 60, 120, 240) if end / one <= most), 480)

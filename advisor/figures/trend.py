@@ -199,6 +199,8 @@ def _outside(
             xshift=-10 if late else 10,
             yanchor="middle",
             font={"size": TEXT_PX, "color": colour},
+            bgcolor=ink.sheet,  # legible where it lies on the line of readings
+            borderpad=1,
         )
 
 

@@ -167,21 +167,22 @@ class PlantSource:
         judged = self._judged(start, end)
         return [] if judged is None else windows_in(judged.rows, start, end)
 
-    def excursions_open(self, at: datetime) -> Sequence[Excursion]:
-        """The excursions that were still running, or had just ended, at ``at``."""
-        judged = self._judged(at - _RECENT, at)
-        if judged is None:
+    def excursions_open(self, at: datetime, units: UnitSystem = "si") -> Sequence[Excursion]:
+        """The excursions still running, or just ended, as known at ``at``, told in ``units``."""
+        # Judged up to ``at`` alone: a longer review knows what came after.
+        try:
+            every = self._reviewed(at - _RECENT, at, units).review.excursions
+        except AdvisorError:
             return []
-        every = judged.review.excursions
         return [one for one in every if one.point == "discharge" and one.end >= at - _STILL_OPEN]
 
     def data_span(self) -> tuple[datetime, datetime]:
         """First and last moment of the plant's log."""
         return log_span(self._facts)
 
-    def review(self, start: datetime, end: datetime) -> Review:
-        """The period against the advice then in force; quick when asked again."""
-        return self._reviewed(start, end).review
+    def review(self, start: datetime, end: datetime, units: UnitSystem = "si") -> Review:
+        """The period against the advice then in force, told in ``units``; quick asked again."""
+        return self._reviewed(start, end, units).review
 
     def certificates(self, at: datetime) -> Sequence[Certificate]:
         """The binder certificates recorded by ``at``, the newest first."""
@@ -266,11 +267,12 @@ class PlantSource:
                     self._busy.pop(old, None)
             return answer
 
-    def _reviewed(self, start: datetime, end: datetime) -> PlantReview:
+    def _reviewed(self, start: datetime, end: datetime, units: UnitSystem = "si") -> PlantReview:
         opened = self._current()
+        facts = replace(opened.facts, units=units)
         return self._kept(
-            ("review", start, end),
-            lambda: review_plant(opened.facts, start, end, log=opened.log),
+            ("review", start, end, units),
+            lambda: review_plant(facts, start, end, log=opened.log),
         )
 
     def _judged(self, start: datetime, end: datetime) -> PlantReview | None:

@@ -6,6 +6,7 @@ from datetime import UTC, date, datetime, timedelta
 from typing import Any
 
 from dash import Dash, Input, Output, State, ctx, dcc, html
+from dash.exceptions import PreventUpdate
 
 from advisor.errors import AdvisorError
 from advisor.figures.bars import bars_height, cause_bars, mix_bars
@@ -127,6 +128,7 @@ def layout(source: Source, search: str | None) -> Any:
                 [
                     html.H2(id=id_of(PAGE, "table-title")),
                     parts.excursion_grid(id_of(PAGE, "table")),
+                    html.Div(id=id_of(PAGE, "printed"), className="print-only"),
                 ],
                 className="sheet table",
             ),
@@ -169,10 +171,9 @@ def _data_days(source: Source) -> tuple[date, date]:
     return start.astimezone(source.zone).date(), last.astimezone(source.zone).date()
 
 
-def _review(source: Source, first: str, last: str) -> Review:
-    return source.review(
-        *days_to_times(date.fromisoformat(first[:10]), date.fromisoformat(last[:10]), source.zone)
-    )
+def _review(source: Source, first: str, last: str, units: UnitSystem) -> Review:
+    days = date.fromisoformat(first[:10]), date.fromisoformat(last[:10])
+    return source.review(*days_to_times(*days, source.zone), units)
 
 
 def register(app: Dash, source: Source) -> None:
@@ -193,7 +194,7 @@ def register(app: Dash, source: Source) -> None:
     )
     def show_period(first: str, last: str, units: UnitSystem) -> dict[str, Any]:
         try:
-            review = _review(source, first, last)
+            review = _review(source, first, last, units)
         except AdvisorError as error:
             empty = dict.fromkeys(("summary", "states", "set-aside", "field-words"), "")
             return {"sentence": error_block(error, "No review"), **empty}
@@ -218,6 +219,7 @@ def register(app: Dash, source: Source) -> None:
             "rows": Output(id_of(PAGE, "table"), "rowData"),
             "columns": Output(id_of(PAGE, "table"), "columnDefs"),
             "grid": Output(id_of(PAGE, "table"), "dashGridOptions"),
+            "printed": Output(id_of(PAGE, "printed"), "children"),
             "table_title": Output(id_of(PAGE, "table-title"), "children"),
         },
         inputs={**period, **chosen, "narrow": Input("narrow", "data")},
@@ -226,11 +228,12 @@ def register(app: Dash, source: Source) -> None:
         first: str, last: str, units: UnitSystem, hours: list[str], scheme: str, narrow: bool
     ) -> dict[str, Any]:
         try:
-            review = _review(source, first, last)
+            review = _review(source, first, last, units)
         except AdvisorError:
             review = _nothing(source, first, last)
         cells = cells_of(hours)
         found = chosen_excursions(review, cells, source.zone)
+        rows = parts.excursion_rows(found, source.zone, units, review.currency)
         ink = ink_of(scheme)
         return {
             "field": week_field(review, units, ink, cells, narrow),
@@ -241,7 +244,8 @@ def register(app: Dash, source: Source) -> None:
             "causes_style": {"height": f"{bars_height(len(cause_shares(found)))}px"},
             "mixes": mix_bars(review, units, ink),
             "mixes_style": {"height": f"{bars_height(len(review.mixes))}px"},
-            "rows": parts.excursion_rows(found, source.zone, units, review.currency),
+            "rows": rows,
+            "printed": parts.printed_excursions(rows, units),
             "columns": parts.excursion_columns(units),
             "grid": parts.grid_options(len(found)),
             "table_title": f"Excursions: {len(found)} of {len(review.excursions)}",
@@ -284,8 +288,10 @@ def register(app: Dash, source: Source) -> None:
         rows: list[dict[str, Any]] | None,
         zoomed: dict[str, Any] | None,
     ) -> dict[str, Any]:
+        if ctx.triggered_id == id_of(PAGE, "trace") and not _of_time(zoomed):
+            raise PreventUpdate  # another size is not another time
         try:
-            span = _trace_span(source, _review(source, first, last), hours, rows)
+            span = _trace_span(source, _review(source, first, last, units), hours, rows)
             if ctx.triggered_id == id_of(PAGE, "trace"):
                 span = _zoomed(span, zoomed or {})
             readings = source.discharge(*span)
@@ -320,6 +326,10 @@ def _trace_span(
         start, end = (datetime.fromisoformat(rows[0][side]) for side in ("start", "end"))
         return start - around, end + around
     return chosen_span(cells_of(hours), review, source.zone)
+
+
+def _of_time(relayout: dict[str, Any] | None) -> bool:
+    return any(key.startswith("xaxis") for key in relayout or {})
 
 
 def _zoomed(span: Span, relayout: dict[str, Any]) -> Span:

@@ -29,6 +29,7 @@ from advisor.units import UnitSystem, shown_number, shown_unit
 AROUND_MIN = 30
 # Rows of the excursions table on one leaf.
 LEAF = 20
+_WRAPPED = {"wrapText": True, "autoHeight": True, "cellClass": "wrapped"}
 
 
 def summary(review: Review, units: UnitSystem) -> Any:
@@ -195,8 +196,6 @@ def excursion_rows(
             ),
             "money": money_words(one.waste.money, currency) if one.waste.excess_tk else "",
             "mix": one.mix,
-            "job": one.job,
-            "state": one.state,
             "cause": one.cause,
             "evidence": one.evidence,
         }
@@ -212,29 +211,49 @@ def excursion_columns(units: UnitSystem) -> list[dict[str, Any]]:
         return {"field": field, "headerName": name, "width": width, "type": "rightAligned"}
 
     return [
-        {"field": "when", "headerName": "start", "width": 150, "pinned": "left"},
-        {"field": "where", "headerName": "where", "width": 136},
-        {"field": "side", "headerName": "side", "width": 84},
-        number("minutes", "min", 70),
-        number("tonnes", shown_unit("mass", units), 76),
-        number("peak", f"peak, {degree}", 94),
-        number("limit", f"limit, {degree}", 94),
-        number("fuel", shown_unit("energy", units), 88),
-        {"field": "money", "headerName": "money", "width": 136},
-        {"field": "mix", "headerName": "mix", "width": 90},
-        {"field": "cause", "headerName": "likely cause", "width": 170},
-        {
-            "field": "evidence",
-            "headerName": "evidence",
-            "minWidth": 420,
-            "flex": 2,
-            "wrapText": True,
-            "autoHeight": True,
-            "cellClass": "wrapped",
-        },
-        {"field": "job", "headerName": "job", "width": 90},
-        {"field": "state", "headerName": "state", "width": 115},
+        {"field": "when", "headerName": "start", "width": 144, "pinned": "left"},
+        {"field": "where", "headerName": "where", "width": 128},
+        {"field": "side", "headerName": "side", "width": 74},
+        number("minutes", "min", 62),
+        number("tonnes", shown_unit("mass", units), 62),
+        number("peak", f"peak, {degree}", 88),
+        number("limit", f"limit, {degree}", 88),
+        number("fuel", shown_unit("energy", units), 74),
+        {"field": "money", "headerName": "money", "width": 130},
+        {"field": "mix", "headerName": "mix", "width": 76},
+        {"field": "cause", "headerName": "likely cause", "width": 126, **_WRAPPED},
+        {"field": "evidence", "headerName": "evidence", "minWidth": 240, "flex": 1, **_WRAPPED},
     ]
+
+
+def printed_excursions(rows: Sequence[dict[str, Any]], units: UnitSystem) -> Any:
+    """The excursions as a plain table with all of them, for paper."""
+    columns = excursion_columns(units)
+    numbers = {one["field"] for one in columns if one.get("type") == "rightAligned"}
+
+    def style(field: str) -> str:
+        return "number" if field in numbers else ""
+
+    return html.Table(
+        [
+            html.Thead(
+                html.Tr(
+                    [html.Th(one["headerName"], className=style(one["field"])) for one in columns]
+                )
+            ),
+            html.Tbody(
+                [
+                    html.Tr(
+                        [
+                            html.Td(row[one["field"]], className=style(one["field"]))
+                            for one in columns
+                        ]
+                    )
+                    for row in rows
+                ]
+            ),
+        ]
+    )
 
 
 def grid_options(count: int) -> dict[str, Any]:
@@ -257,5 +276,5 @@ def excursion_grid(grid_id: str) -> Any:
         rowData=[],
         defaultColDef={"resizable": True, "sortable": True},
         dashGridOptions=grid_options(0),
-        className="excursion-grid",
+        className="excursion-grid screen-only",
     )

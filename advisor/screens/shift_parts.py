@@ -60,9 +60,8 @@ def heading(view: ShiftView) -> Parts:
     if view.expired:
         parts.append(html.Strong(f"Expired at {until}", className="tag"))
     else:
-        parts.append(
-            html.Span(f"valid until {until} {advice.valid_because}".strip(), className="quiet")
-        )
+        words = ", ".join(filter(None, (f"valid until {until}", advice.valid_because)))
+        parts.append(html.Span(words, className="quiet"))
     return parts
 
 

@@ -68,8 +68,8 @@ def shift_view(
         age_s=(moment - last).total_seconds() if last else None,
         last_reading_at=last,
         discharge=source.discharge(start, moment),
+        excursions=source.excursions_open(moment, units),  # first: it finds the windows too
         windows=source.windows_in_force(start, moment),
-        excursions=source.excursions_open(moment),
         later=source.rest_of_shift(job, moment, units),
     )
 

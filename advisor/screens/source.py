@@ -92,14 +92,14 @@ class Source(Protocol):
     def windows_in_force(self, start: datetime, end: datetime) -> Sequence[WindowSpan]:
         """The discharge windows that were in force from ``start`` to ``end``."""
 
-    def excursions_open(self, at: datetime) -> Sequence[Excursion]:
-        """The excursions that were still running, or had just ended, at ``at``."""
+    def excursions_open(self, at: datetime, units: UnitSystem = "si") -> Sequence[Excursion]:
+        """The excursions still running, or just ended, as known at ``at``, told in ``units``."""
 
     def data_span(self) -> tuple[datetime, datetime]:
         """First and last moment of the plant's log."""
 
-    def review(self, start: datetime, end: datetime) -> Review:
-        """The period against the advice then in force; quick when asked again."""
+    def review(self, start: datetime, end: datetime, units: UnitSystem = "si") -> Review:
+        """The period against the advice then in force, told in ``units``; quick asked again."""
 
     def certificates(self, at: datetime) -> Sequence[Certificate]:
         """The binder certificates recorded by ``at``, the newest first."""

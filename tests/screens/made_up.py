@@ -248,13 +248,13 @@ class MadeUpPlant:
             WindowSpan(change, end, 151, 156, 165, "S-10"),
         )
 
-    def excursions_open(self, at: datetime) -> Sequence[Excursion]:
+    def excursions_open(self, at: datetime, units: str = "si") -> Sequence[Excursion]:
         return (replace(EXCURSIONS[0], start=at - timedelta(minutes=18), end=at, minutes=18),)
 
     def data_span(self) -> tuple[datetime, datetime]:
         return WEEK, WEEK + timedelta(days=7)
 
-    def review(self, start: datetime, end: datetime) -> Review:
+    def review(self, start: datetime, end: datetime, units: str = "si") -> Review:
         return review(start, end)
 
     def certificates(self, at: datetime) -> Sequence[Certificate]:

@@ -64,6 +64,18 @@ def test_the_heat_path_carries_the_window_and_the_target_of_the_advice():
     np.testing.assert_allclose(in_f.y, np.array(target.y) * 1.8 + 32.0)
 
 
+@pytest.mark.parametrize("units", ["si", "us"])
+@pytest.mark.parametrize("name", ["path", "trend"])
+def test_what_is_drawn_lies_within_the_axis_in_either_units(units, name):
+    figure = figures(units, LIGHT)[name]
+    low, high = figure.layout.yaxis.range
+    drawn = [value for one in figure.data for value in one.y if value is not None]
+    assert low <= min(drawn) and max(drawn) <= high
+    # and the axis is not far wider than what it shows
+    assert high - low < 2.0 * (max(drawn) - min(drawn))
+    assert figure.layout.yaxis.tickvals[-1] <= high
+
+
 def test_words_for_those_who_do_not_see_say_what_the_figures_show():
     words = heat_path_words(advice(), PLANT.readings(NOW), "si")
     assert "156" in words and "hot" in words

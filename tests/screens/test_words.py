@@ -19,7 +19,7 @@ from screens.made_up import EXCURSIONS, NOW, ZONE, MadeUpPlant, advice
 class Quiet(MadeUpPlant):
     """The made-up plant with no excursion running."""
 
-    def excursions_open(self, at):
+    def excursions_open(self, at, units="si"):
         return ()
 
 

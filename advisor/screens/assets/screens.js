@@ -40,6 +40,18 @@
     if (event.key === "Escape" && sheet) { sheet.querySelector("button.close").click(); }
   });
 
+  // Paper is narrower than the window: the figures are drawn anew for it, and back again.
+  const paper = window.matchMedia("print");
+  paper.addEventListener("change", function () {
+    document.querySelectorAll(".js-plotly-plot").forEach(function (figure) {
+      if (!window.Plotly || !figure.offsetParent) { return; }
+      const room = figure.parentElement.getBoundingClientRect();
+      window.Plotly.relayout(figure, paper.matches
+        ? { autosize: false, width: room.width, height: room.height }
+        : { autosize: true, width: null, height: null });
+    });
+  });
+
   // Each answer changes a counter; where it stands still, the program has gone silent.
   let counted = null;
   let since = Date.now();
