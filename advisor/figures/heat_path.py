@@ -67,7 +67,7 @@ def heat_path(
     found = [(one, place) for one in readings if (place := _place(path, one.point))]
     for reading, place in found:
         if reading.value_c is not None:
-            room.keep_clear(place.minutes, temperature(reading.value_c, units), 10)
+            room.keep_clear(place.minutes, temperature(reading.value_c, units), 15)
     for reading, place in found:
         _reading(figure, place, reading, room, units, ink, narrow)
     for limit in limits:

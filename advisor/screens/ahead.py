@@ -21,6 +21,7 @@ from advisor.figures.base import STILL, blank
 from advisor.figures.hours import coming_hours, coming_hours_words
 from advisor.figures.ink import ink_of
 from advisor.screens import ahead_parts as parts
+from advisor.screens.entry import choice, section
 from advisor.screens.ids import id_of
 from advisor.screens.query import shift_query
 from advisor.screens.source import Source
@@ -58,22 +59,22 @@ def layout(source: Source, search: str | None) -> Any:
             dcc.Store(id=id_of(PAGE, "at"), data=asked.at.isoformat() if asked.at else None),
             html.Div([html.P(one, className="banner") for one in asked.faults], className="alerts"),
             html.Div(
-                [_day(options, asked.job or ""), _section("hours", "Hour by hour, at discharge")],
+                [_day(options, asked.job or ""), section(PAGE, "hours", "Hour by hour, at discharge")],
                 className="column",
             ),
             html.Div(
                 [
                     _form("load", "This load", [
-                        _choice("Ticket", "ticket", loads, loads[0]["value"] if loads else None),
+                        choice(PAGE, "Ticket", "ticket", loads, loads[0]["value"] if loads else None),
                     ]),
                     _form("silo", "Silo overnight", [
-                        _choice("Silo", "silo-name", _named(names["silos"]), names["silo"]),
+                        choice(PAGE, "Silo", "silo-name", _named(names["silos"]), names["silo"]),
                         _entry("Until", "silo-until", _MORNING, "06:00, or 2026-10-24 06:00"),
                         _entry("Mix in it", "silo-mass", "", "by the log, or 80 t"),
                         _entry("Its temperature", "silo-stored", "", "by the log, or 160 C"),
                     ]),
                     _form("tank", "Tank over the weekend", [
-                        _choice("Tank", "tank-name", _named(names["tanks"]), names["tank"]),
+                        choice(PAGE, "Tank", "tank-name", _named(names["tanks"]), names["tank"]),
                         _entry("Wanted again", "tank-until", names["monday"], "2026-10-26 05:30"),
                         _entry("Mean air", "tank-air", "", "by the forecast, or 7 C"),
                         _entry("Price of a kWh", "tank-price", "", "not priced, or 0.09"),
@@ -286,7 +287,7 @@ def _day(options: list[dict[str, str]], job: str) -> Any:
             html.Div(
                 [
                     html.Div(id=id_of(PAGE, "heading"), className="heading"),
-                    _choice("Job", "job", options, job),
+                    choice(PAGE, "Job", "job", options, job),
                 ],
                 className="top",
             ),
@@ -303,10 +304,6 @@ def _day(options: list[dict[str, str]], job: str) -> Any:
     )
 
 
-def _section(part: str, title: str) -> Any:
-    return html.Section([html.H2(title), html.Div(id=id_of(PAGE, part))], className=f"sheet {part}")
-
-
 def _form(part: str, title: str, entries: list[Any]) -> Any:
     return html.Section(
         [
@@ -315,22 +312,6 @@ def _form(part: str, title: str, entries: list[Any]) -> Any:
             html.Div(id=id_of(PAGE, part), className="answer"),
         ],
         className=f"sheet {part}",
-    )
-
-
-def _choice(label: str, part: str, options: list[dict[str, str]], value: str | None) -> Any:
-    return html.Div(
-        [
-            html.Label(label, htmlFor=id_of(PAGE, part)),
-            dcc.Dropdown(
-                id=id_of(PAGE, part),
-                options=options,
-                value=value,
-                clearable=False,
-                searchable=False,
-            ),
-        ],
-        className="choose",
     )
 
 

@@ -16,6 +16,7 @@ from advisor.figures.drift import drift_figure
 from advisor.figures.ink import Ink, ink_of
 from advisor.figures.viscosity import viscosity_chart, viscosity_words
 from advisor.screens import binder_parts as parts
+from advisor.screens.entry import choice, section
 from advisor.screens.ids import id_of
 from advisor.screens.query import binder_query
 from advisor.screens.shift_parts import error_block
@@ -56,8 +57,9 @@ def layout(source: Source, search: str | None) -> Any:
                                     html.Div(id=id_of(PAGE, "heading"), className="heading"),
                                     html.Div(
                                         [
-                                            _choice("Lot", "lot", options, lot),
-                                            _choice(
+                                            choice(PAGE, "Lot", "lot", options, lot),
+                                            choice(
+                                                PAGE,
                                                 "against",
                                                 "against",
                                                 [{"label": "nothing", "value": ""}, *options],
@@ -80,7 +82,7 @@ def layout(source: Source, search: str | None) -> Any:
                         ],
                         className="sheet chart",
                     ),
-                    _section("readings", "Readings"),
+                    section(PAGE, "readings", "Readings"),
                     html.Section(
                         [
                             html.H2("Lots of this source, temperature at 0.17 Pa.s"),
@@ -97,37 +99,17 @@ def layout(source: Source, search: str | None) -> Any:
                         className="sheet lots",
                         hidden=True,
                     ),
-                    *(_section(part, title) for part, title in _LEFT),
+                    *(section(PAGE, part, title) for part, title in _LEFT),
                 ],
                 className="column",
             ),
             html.Div(
-                [_section(part, title) for part, title in _RIGHT],
+                [section(PAGE, part, title) for part, title in _RIGHT],
                 className="column aside",
             ),
         ],
         className="page binder",
     )
-
-
-def _choice(label: str, part: str, options: list[dict[str, str]], value: str) -> Any:
-    return html.Div(
-        [
-            html.Label(label, htmlFor=id_of(PAGE, part)),
-            dcc.Dropdown(
-                id=id_of(PAGE, part),
-                options=options,
-                value=value,
-                clearable=False,
-                searchable=False,
-            ),
-        ],
-        className="choose",
-    )
-
-
-def _section(part: str, title: str) -> Any:
-    return html.Section([html.H2(title), html.Div(id=id_of(PAGE, part))], className=f"sheet {part}")
 
 
 def register(app: Dash, source: Source) -> None:

@@ -6,7 +6,6 @@ from datetime import UTC, date, datetime, timedelta
 from typing import Any
 
 from dash import Dash, Input, Output, State, ctx, dcc, html
-from dash.exceptions import PreventUpdate
 
 from advisor.errors import AdvisorError
 from advisor.figures.bars import bars_height, cause_bars, mix_bars
@@ -277,6 +276,7 @@ def register(app: Dash, source: Source) -> None:
             **chosen,
             "rows": Input(id_of(PAGE, "table"), "selectedRows"),
             "zoomed": Input(id_of(PAGE, "trace"), "relayoutData"),
+            "narrow": Input("narrow", "data"),
         },
     )
     def show_trace(
@@ -287,9 +287,8 @@ def register(app: Dash, source: Source) -> None:
         scheme: str,
         rows: list[dict[str, Any]] | None,
         zoomed: dict[str, Any] | None,
+        narrow: bool,
     ) -> dict[str, Any]:
-        if ctx.triggered_id == id_of(PAGE, "trace") and not _of_time(zoomed):
-            raise PreventUpdate  # another size is not another time
         try:
             span = _trace_span(source, _review(source, first, last, units), hours, rows)
             if ctx.triggered_id == id_of(PAGE, "trace"):
@@ -302,7 +301,15 @@ def register(app: Dash, source: Source) -> None:
             return {"trace": blank(), "trace_title": "Trace", "trace_words": ""}
         return {
             "trace": trend(
-                readings, windows, *span, source.zone, units, ink_of(scheme), tickets, zoom=True
+                readings,
+                windows,
+                *span,
+                source.zone,
+                units,
+                ink_of(scheme),
+                tickets,
+                zoom=True,
+                narrow=narrow,
             ),
             "trace_title": _trace_title(span, source),
             "trace_words": trend_words(readings, windows, units),
@@ -326,10 +333,6 @@ def _trace_span(
         start, end = (datetime.fromisoformat(rows[0][side]) for side in ("start", "end"))
         return start - around, end + around
     return chosen_span(cells_of(hours), review, source.zone)
-
-
-def _of_time(relayout: dict[str, Any] | None) -> bool:
-    return any(key.startswith("xaxis") for key in relayout or {})
 
 
 def _zoomed(span: Span, relayout: dict[str, Any]) -> Span:

@@ -3,9 +3,11 @@
 from __future__ import annotations
 
 import errno
+import gzip
 import ipaddress
 import threading
 from collections.abc import Callable
+from functools import lru_cache
 from pathlib import Path
 from typing import Any
 
@@ -20,6 +22,8 @@ from advisor.screens.plant_source import PlantSource
 HOST, PORT = "127.0.0.1", 8617
 _THREADS = 8
 _LOOPBACK_NAMES = ("localhost", "127.0.0.1", "[::1]")
+_WORTH_PACKING = 2000  # bytes; a shorter answer fits into two packets as it is
+_PACKED_KINDS = ("text/", "application/json", "application/javascript")
 
 
 class PageServer:
@@ -31,7 +35,7 @@ class PageServer:
     def __init__(self, plant: Path, host: str = HOST, port: int = PORT) -> None:
         self.source = PlantSource(plant)
         app = make_app(self.source)
-        _guard(app, host)
+        guard(app, host)
         self._server = Server((host, port), app.server, numthreads=_THREADS)
         try:
             self._server.prepare()
@@ -78,8 +82,10 @@ def is_loopback(host: str) -> bool:
         return False
 
 
-def _guard(app: Dash, host: str) -> None:
-    """Let pages load nothing from elsewhere, and answer on loopback to loopback names alone."""
+def guard(app: Dash, host: str) -> None:
+    """Give ``app``, served at ``host``, its rules: load nothing from elsewhere, answer on loopback
+    to loopback names alone, pack what goes to other machines.
+    """
     policy = "; ".join(
         (
             "default-src 'self'",
@@ -107,10 +113,32 @@ def _guard(app: Dash, host: str) -> None:
         response.headers["Referrer-Policy"] = "no-referrer"
         return response
 
+    def packed(response: Response) -> Response:
+        # On this machine packing would cost more time than it saves.
+        if is_loopback(host) or not request.accept_encodings["gzip"]:
+            return response
+        if response.status_code != 200 or "Content-Encoding" in response.headers:
+            return response
+        if not (response.mimetype or "").startswith(_PACKED_KINDS):
+            return response
+        response.direct_passthrough = False
+        body = response.get_data()
+        if len(body) >= _WORTH_PACKING:
+            response.set_data(_gzip(body))
+            response.headers["Content-Encoding"] = "gzip"
+            response.vary.add("Accept-Encoding")
+        return response
+
     before: Callable[..., Any] = app.server.before_request
     after: Callable[..., Any] = app.server.after_request
     before(only_this_machine)
     after(with_policy)
+    after(packed)
+
+
+@lru_cache(maxsize=64)  # the scripts of the pages are asked for by every reader
+def _gzip(body: bytes) -> bytes:
+    return gzip.compress(body, 6, mtime=0)
 
 
 def _refused(error: OSError, host: str, port: int) -> AdvisorError:

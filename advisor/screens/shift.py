@@ -20,6 +20,7 @@ from advisor.screens.query import shift_query
 from advisor.screens.shift_view import TREND_HOURS, ShiftView, shift_view
 from advisor.screens.source import Source
 from advisor.screens.why import why_sheet
+from advisor.screens.words import moment_words
 from advisor.units import UnitSystem
 
 PAGE = "shift"
@@ -166,6 +167,9 @@ def register(app: Dash, source: Source) -> None:
             )
         except AdvisorError as error:
             return _refused(error, faults)
+        if at:
+            then = moment_words(view.at, view.zone)
+            faults = [f"As it was known at {then}, not now.", *faults]
         return shown(view, units, ink_of(scheme), narrow, faults)
 
     @app.callback(

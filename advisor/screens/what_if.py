@@ -16,6 +16,7 @@ from advisor.figures.energy import energy_bars, energy_height, energy_words
 from advisor.figures.heat_path import heat_path, heat_path_words
 from advisor.figures.ink import Ink, ink_of
 from advisor.screens import what_if_parts as parts
+from advisor.screens.entry import choice
 from advisor.screens.ids import id_of
 from advisor.screens.shift_parts import error_block
 from advisor.screens.source import Source
@@ -43,9 +44,10 @@ def layout(source: Source, search: str | None) -> Any:
                     html.Section(
                         [
                             html.H2("As it is now, and as it would be"),
-                            _choice("Job", "job", jobs),
+                            choice(PAGE, "Job", "job", jobs),
                             *(_slider(one) for one in SLIDERS),
-                            _choice(
+                            choice(
+                                PAGE,
                                 "Additive",
                                 "additive",
                                 [{"label": "as the mix has it", "value": ""}]
@@ -85,18 +87,6 @@ def layout(source: Source, search: str | None) -> Any:
             ),
         ],
         className="page what-if",
-    )
-
-
-def _choice(label: str, part: str, options: list[dict[str, str]]) -> Any:
-    return html.Div(
-        [
-            html.Label(label, htmlFor=id_of(PAGE, part)),
-            dcc.Dropdown(
-                id=id_of(PAGE, part), options=options, value="", clearable=False, searchable=False
-            ),
-        ],
-        className="choose",
     )
 
 

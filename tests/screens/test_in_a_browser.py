@@ -82,6 +82,9 @@ def test_a_job_without_a_safe_window_says_so_and_what_would_help(
     assert answer["lower"]["name"] in told and answer["upper"]["name"] in told
     assert all(one["action"] in told for one in answer["remedies"])
     assert page.locator(".setpoints").count() == 0
+    # nothing empty stands where there is nothing to tell
+    assert not page.locator(".sheet.path").is_visible()
+    assert not page.locator(".sheet.reasons").is_visible()
     picture(page, "clash")
 
 
@@ -104,6 +107,11 @@ def test_fahrenheit_is_shown_everywhere_at_once(open_page, demo_address, demo_fo
     target = answer["setpoints"][1]["target_c"] * 1.8 + 32
     expect(page.locator(".setpoint.discharge .figure")).to_have_text(f"{target:.0f}", timeout=WAIT)
     main = page.locator("main").inner_text()
+    words = page.locator("#shift-path-words").inner_text()
+    assert f"target {target:.0f}" in words
+    drawn = page.locator(".path .scatterlayer .js-line").first.bounding_box()
+    sheet = page.locator(".path .plotclip rect").first
+    assert drawn and drawn["height"] > 5 and sheet.count() == 1
     # what a contract or a table wrote in C stays as it was written
     assert not re.search(r"\d °C", main)
     for reason in answer["reasons"]:
@@ -224,6 +232,26 @@ def test_the_pages_print_without_their_controls(open_page, demo_address, tmp_pat
     assert raw.startswith(b"%PDF")
 
 
+def test_paper_carries_every_excursion_and_figures_of_its_own_width(open_page, demo_address):
+    page = open_page(f"{demo_address}review")
+    page.wait_for_selector(".ag-row", timeout=WAIT)
+    page.wait_for_selector(".sheet.trace .scatterlayer", state="attached", timeout=WAIT)
+    rows = page.locator("#review-printed tbody tr")
+    expect(page.locator("#review-table-title")).to_have_text(
+        f"Excursions: {rows.count()} of {rows.count()}"
+    )
+    expect(rows.first).to_be_hidden()
+    page.set_viewport_size({"width": 700, "height": 990})
+    page.emulate_media(media="print")
+    expect(rows.last).to_be_visible()
+    expect(page.locator(".excursion-grid")).to_be_hidden()
+    paper = page.locator(".page").bounding_box()
+    for figure in page.locator(".js-plotly-plot .main-svg:first-child").all():
+        box = figure.bounding_box()
+        assert box["x"] + box["width"] <= paper["x"] + paper["width"]
+    assert page.evaluate("document.documentElement.scrollWidth") <= 700
+
+
 def test_the_clash_of_a_made_up_plant_fits_the_screen(open_page):
     with served(MadeUpPlant(clashing())) as address:
         page = open_page(address)
@@ -241,6 +269,11 @@ def test_the_server_answers_this_machine_only_and_forbids_what_comes_from_elsewh
     strange = Request(demo_address, headers={"Host": "plant.example:80"})  # noqa: S310
     with pytest.raises(OSError, match="403"):
         urlopen(strange, timeout=20)  # noqa: S310
+
+
+def test_a_moment_that_is_past_is_said_to_be(open_page, demo_address):
+    page = shift_of(open_page(f"{demo_address}?at=2026-10-22T10:40"))
+    assert "As it was known at Thu 22 Oct 10:40, not now" in page.locator(".alerts").inner_text()
 
 
 def test_a_port_in_use_is_named_with_another_way(demo_folder, demo_address):
