@@ -67,7 +67,7 @@ def heat_path(
     found = [(one, place) for one in readings if (place := _place(path, one.point))]
     for reading, place in found:
         if reading.value_c is not None:
-            room.keep_clear(place.minutes, temperature(reading.value_c, units), 15)
+            room.keep_clear(place.minutes, temperature(reading.value_c, units), 12)
     for reading, place in found:
         _reading(figure, place, reading, room, units, ink, narrow)
     for limit in limits:
@@ -289,17 +289,19 @@ def _reading(
         "unknown": " not used",
         "inside": "",
     }[verdict]
-    words = f"{round(value)}{'' if narrow else after}"
     spots: list[tuple[float, float, Anchor]] = [
         (x, value, "right"),
         (x, value, "left"),
         (x, value, "above"),
         (x, value, "below"),
     ]
+    # Mark and colour say the side too; by how much stands in the setpoint where room is short.
+    if narrow or not room.fits(f"{round(value)}{after}", TEXT_PX + 2, spots, away=13):
+        after = ""
     figure.add_annotation(
         {
-            **room.place(words, TEXT_PX + 2, spots, away=13),
-            "text": f"<b>{round(value)}</b>{'' if narrow else after}",
+            **room.place(f"{round(value)}{after}", TEXT_PX + 2, spots, away=13),
+            "text": f"<b>{round(value)}</b>{after}",
             "font": {"size": TEXT_PX + 2, "color": colour},
         }
     )

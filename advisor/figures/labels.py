@@ -39,6 +39,20 @@ class Room:
         left, low = self._px(x, y)
         self.taken.append((left - half, low - half, left + half, low + half))
 
+    def fits(
+        self,
+        words: str,
+        size: float,
+        spots: Sequence[tuple[float, float, Anchor]],
+        away: int = 0,
+    ) -> bool:
+        """Whether one of the ``spots`` is free for ``words`` of ``size`` px, ``away`` px off."""
+        wide, tall = len(words) * size * _LETTER, size * _LINE
+        return any(
+            self._overlap(self._box(x, y, anchor, wide, tall, away)) <= 0.0
+            for x, y, anchor in spots
+        )
+
     def place(
         self,
         words: str,

@@ -44,7 +44,7 @@ AT_POINT: dict[Point, str] = {
     "load_out": "at load-out",
     "delivery": "at the paver",
 }
-# The window takes the middle of the little scale, so that what is outside has room to show.
+# The window takes the middle of the scale; what is outside has room beside it.
 _WINDOW_FROM, _WINDOW_TO = 22.0, 78.0
 
 
@@ -238,7 +238,8 @@ def clash_block(clash: Clash, units: UnitSystem) -> object:
                                     html.Td(one.cost),
                                 ]
                             )
-                            for one in clash.remedies
+                            # What is enough by itself stands first.
+                            for one in sorted(clash.remedies, key=lambda one: not one.enough)
                         ]
                     ),
                 ]

@@ -153,6 +153,19 @@ def test_text_and_marks_stand_out_from_their_ground(ink):
     assert contrast("#000000", "#ffffff") == pytest.approx(21.0)
 
 
+def test_numbers_of_near_points_do_not_lie_on_one_another():
+    # silo and load-out so near that 'hot by' of the one would reach the mark of the other
+    made = advice()
+    minutes = {"drum": 0.0, "silo": 2.0, "load-out": 10.0}
+    path = tuple(replace(one, minutes=minutes.get(one.name, one.minutes)) for one in made.path)
+    hot = tuple(Reading(point, 171.0, 1.0, NOW, "") for point in ("discharge", "silo", "load_out"))
+    figure = heat_path(replace(made, path=path), hot, "si", LIGHT)
+    numbers = [one.text for one in figure.layout.annotations if "171" in one.text]
+    assert len(numbers) == 3
+    assert any("hot by" not in one for one in numbers)
+    assert sum("hot by" in one for one in numbers) >= 1
+
+
 def test_a_reading_in_doubt_is_drawn_as_such():
     doubtful = Reading("discharge", 150.0, 1.0, NOW, "stuck since 08:40")
     figure = heat_path(advice(), (doubtful,), "si", LIGHT)
