@@ -142,8 +142,7 @@ class Records:
     def subjects(self, kind: str) -> tuple[str, ...]:
         """Everything that facts of ``kind`` are about, in order of name."""
         query = "SELECT DISTINCT subject FROM entry WHERE kind = ? ORDER BY subject"
-        with self._lock:
-            return tuple(row[0] for row in self._db.execute(query, (kind,)))
+        return tuple(row[0] for row in self._rows(query, (kind,)))
 
     def history(self) -> tuple[Entry, ...]:
         """Every entry ever recorded, corrected and withdrawn ones too, in the order recorded."""
@@ -173,14 +172,12 @@ class Records:
 
     def built_from(self) -> tuple[str, int] | None:
         """Digest of the files the store was built from, and how many entries they brought."""
-        with self._lock:
-            row = self._db.execute("SELECT digest, entries FROM built_from").fetchone()
-        return (str(row[0]), int(row[1])) if row else None
+        rows = self._rows("SELECT digest, entries FROM built_from")
+        return (str(rows[0][0]), int(rows[0][1])) if rows else None
 
     def count(self) -> int:
         """How many entries were ever recorded."""
-        with self._lock:
-            return int(self._db.execute("SELECT count(*) FROM entry").fetchone()[0])
+        return int(self._rows("SELECT count(*) FROM entry")[0][0])
 
     @contextmanager
     def transaction(self) -> Iterator[sqlite3.Connection]:
@@ -238,9 +235,14 @@ class Records:
         return self._db.execute(_INSERT, row).rowcount == 1
 
     def _read(self, query: str, values: dict[str, Any]) -> tuple[Entry, ...]:
-        with self._lock:
-            rows = self._db.execute(query, values).fetchall()
-        return tuple(self._entry(row) for row in rows)
+        return tuple(self._entry(row) for row in self._rows(query, values))
+
+    def _rows(self, query: str, values: Any = ()) -> list[tuple[Any, ...]]:
+        try:
+            with self._lock:
+                return self._db.execute(query, values).fetchall()
+        except sqlite3.Error as error:
+            raise self._refused("cannot be read", error) from error
 
     def _entry(self, row: tuple[Any, ...]) -> Entry:
         _, name, kind, subject, valid_from, recorded_at, replaces, withdrawn, who, why, text = row
@@ -292,7 +294,7 @@ class Records:
             if version == len(steps):
                 return
         except sqlite3.Error as error:
-            raise self._refused("is not a store", error) from error
+            raise self._refused("cannot be read", error) from error
         if self.read_only:
             raise StoreRefused.of(
                 "store-older",
@@ -310,10 +312,18 @@ class Records:
         return int(self._db.execute("PRAGMA user_version").fetchone()[0])
 
     def _refused(self, what: str, error: sqlite3.Error) -> StoreRefused:
-        fault = Fault(
-            "store", f"The store {what}: {error}.", "Nothing was changed.", file=str(self.path)
+        remedy = "Nothing was changed."
+        code = getattr(error, "sqlite_errorcode", None)
+        if code in (sqlite3.SQLITE_CORRUPT, sqlite3.SQLITE_NOTADB):
+            remedy += (
+                " Put your backup of it in its place; without one, move the file away and it is "
+                "built again from the folder 'records': what was only recorded in it is lost."
+            )
+        elif code in (sqlite3.SQLITE_READONLY, sqlite3.SQLITE_CANTOPEN):
+            remedy += " Look who may read and write the file and its folder."
+        return StoreRefused(
+            Fault("store", f"The store {what}: {error}.", remedy, file=str(self.path))
         )
-        return StoreRefused(fault)
 
 
 def _known(known_at: dt.datetime | None) -> dict[str, str]:

@@ -10,7 +10,7 @@ from typing import Annotated, Any, TypeVar, Union, get_args, get_origin
 from pydantic import BaseModel, ValidationError
 
 from advisor.errors import Fault
-from advisor.settings.fields import OfKind
+from advisor.settings.fields import NAME_FORM, OfKind
 from advisor.settings.yaml_source import Steps, YamlSource, field_name
 
 Model = TypeVar("Model", bound=BaseModel)
@@ -109,6 +109,17 @@ def _fault(error: Any, model: type[BaseModel], source: YamlSource, above: Steps)
     elif kind in _NEEDS:
         what, remedy = _NEEDS[kind]
         problem = f"This has to be {what}; YAML reads it as {_yaml_words(given)}."
+    elif kind == "string_pattern_mismatch":
+        problem = f"'{given}' is not written as it should be."
+        asked = "One line of text without a space at either end."
+        remedy = asked if context["pattern"] == NAME_FORM else f"Wanted: {_wanted(model, inside)}"
+    elif kind == "string_too_long":
+        problem = f"This text has {len(given)} characters."
+        remedy = f"Write at most {context['max_length']}."
+    elif kind in ("string_too_short", "too_short"):
+        least = context["min_length"]
+        problem = "This may not be empty." if least == 1 else f"This needs at least {least} values."
+        remedy = f"Wanted: {_wanted(model, inside)}"
     else:
         problem = f"{error['msg']}."
     place = source.place(steps)

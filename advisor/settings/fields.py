@@ -182,5 +182,6 @@ _ISO = PlainSerializer(lambda value: value.isoformat(), return_type=str)
 ClockTime = Annotated[dt.time, PlainValidator(_read_clock), _ISO]
 Day = Annotated[dt.date, PlainValidator(_read_day), _ISO]
 
-Name = Annotated[str, Field(min_length=1, max_length=80, pattern=r"^\S(.*\S)?$")]
-Sentence = Annotated[str, Field(min_length=1, max_length=600)]
+NAME_FORM = r"^\S(.*\S)?$"
+Name = Annotated[str, Field(min_length=1, max_length=80, pattern=NAME_FORM)]
+Sentence = Annotated[str, Field(min_length=1, max_length=600, pattern=r"\S")]

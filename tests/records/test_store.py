@@ -180,6 +180,22 @@ def test_a_store_of_a_newer_program_is_refused_and_not_changed(tmp_path):
         Records(path, ZONE)
 
 
+def test_a_store_damaged_inside_is_refused_where_it_is_read(own_demo):
+    with open_records(own_demo) as records:
+        path = records.path
+    for ending in ("-wal", "-shm"):
+        (path.parent / f"{path.name}{ending}").unlink(missing_ok=True)
+    raw = bytearray(path.read_bytes())
+    for page in range(3, len(raw) // 4096, 3):
+        raw[page * 4096 : (page + 1) * 4096] = 4096 * b"?"
+    path.write_bytes(raw)
+    with (
+        pytest.raises(StoreRefused, match=r"records\.sqlite: The store cannot be .*backup"),
+        open_records(own_demo) as records,
+    ):
+        records.all_held("certificate")
+
+
 def test_several_threads_may_write_at_once(store):
     def write(number):
         for k in range(10):
