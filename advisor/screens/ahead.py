@@ -59,13 +59,16 @@ def layout(source: Source, search: str | None) -> Any:
             dcc.Store(id=id_of(PAGE, "at"), data=asked.at.isoformat() if asked.at else None),
             html.Div([html.P(one, className="banner") for one in asked.faults], className="alerts"),
             html.Div(
-                [_day(options, asked.job or ""), section(PAGE, "hours", "Hour by hour, at discharge")],
+                [
+                    _day(options, asked.job or ""),
+                    section(PAGE, "hours", "Hour by hour, at discharge"),
+                ],
                 className="column",
             ),
             html.Div(
                 [
                     _form("load", "This load", [
-                        choice(PAGE, "Ticket", "ticket", loads, loads[0]["value"] if loads else None),
+                        choice(PAGE, "Ticket", "ticket", loads, newest),
                     ]),
                     _form("silo", "Silo overnight", [
                         choice(PAGE, "Silo", "silo-name", _named(names["silos"]), names["silo"]),

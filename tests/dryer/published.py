@@ -2,8 +2,7 @@
 
 from __future__ import annotations
 
-import csv
-from dataclasses import dataclass, replace
+from dataclasses import replace
 from functools import cache
 from pathlib import Path
 
@@ -20,6 +19,7 @@ from advisor.dryer import (
     heat_balance,
 )
 from advisor.settings.tables import load_table
+from published import Case, read_cases
 
 SHORT_TON_KG = 907.18474
 BTU_J = 1055.05585262
@@ -37,40 +37,10 @@ FUELS = {
 }
 
 
-@dataclass(frozen=True)
-class Case:
-    """One row: what went in, what came out, how far off a calculation may be."""
-
-    id: str
-    inputs: dict[str, str]
-    expected: float
-    tolerance: float
-    source: str
-    how_known: str
-
-    def __getitem__(self, name: str) -> float:
-        return float(self.inputs[name])
-
-    def __str__(self) -> str:
-        return self.id
-
-
 @cache
 def every_case() -> dict[str, Case]:
     """All rows by id."""
-    with Path(__file__).with_name("cases.csv").open(encoding="utf-8", newline="") as file:
-        rows = list(csv.DictReader(file))
-    return {
-        row["id"]: Case(
-            row["id"],
-            dict(part.split("=", 1) for part in row["inputs"].split(";")),
-            float(row["expected"]),
-            float(row["tolerance"]),
-            row["source"],
-            row["how_known"],
-        )
-        for row in rows
-    }
+    return read_cases(Path(__file__).with_name("cases.csv"))
 
 
 def case(name: str) -> Case:
