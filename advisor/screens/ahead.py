@@ -53,6 +53,7 @@ def layout(source: Source, search: str | None) -> Any:
          "value": one.ticket}
         for one in reversed(tickets)
     ]  # fmt: skip
+    newest = loads[0]["value"] if loads else None
     names = source.ask("names", at, _names)
     return html.Div(
         [
