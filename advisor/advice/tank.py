@@ -9,6 +9,7 @@ from advisor.advice.result import Authority, Limit, Reason, Setpoint, Side
 from advisor.advice.situation import Situation
 from advisor.binder.tank import Bound, TankRange, tank_range
 from advisor.errors import OutsideValidity
+from advisor.units import shown
 
 # The tank is set this far inside its range where the mixing target lies outside it; common
 # practice, no source.
@@ -35,7 +36,10 @@ def tank_setpoint(
     low = max(lows, key=lambda one: one.value_c)
     high = min(highs, key=lambda one: one.value_c)
     if low.value_c > high.value_c:
-        words = f"{low.name} {low.value_c:.0f} C lies above {high.name} {high.value_c:.0f} C."
+        low_at, high_at = (
+            shown(one.value_c, "temperature", situation.facts.units) for one in (low, high)
+        )
+        words = f"{low.name} {low_at} lies above {high.name} {high_at}."
         return None, (Reason("tank", f"The tank has no temperature: {words}"),)
     wanted = float(binder.mixing.target_c) if binder.mixing else 0.5 * (low.value_c + high.value_c)
     inside = min(_INSIDE_K, 0.5 * (high.value_c - low.value_c))

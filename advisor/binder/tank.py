@@ -109,7 +109,7 @@ def tank_range(
     if flash_point_c is None:
         cautions.append("No flash point on the sheet: the margin to it cannot be checked.")
     else:
-        words = f"{FLASH_MARGIN_K:g} K below the flash point"
+        words = "margin kept below the flash point"
         source = "Eurobitume, Loading and storage"
         highs.append(Bound(flash_point_c - FLASH_MARGIN_K, words, source, "looked up"))
         if not flash_method:

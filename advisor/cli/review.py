@@ -124,13 +124,13 @@ def _print(found: Review, zone: ZoneInfo, units: UnitSystem, loads: bool) -> Non
                 mass(one.cold_tonnes),
                 mass(one.no_advice_tonnes),
                 shown(one.mean_c, "temperature", units),
-                f"{_range(one.waste.fuel_kwh)} kWh",
+                _heat(one.waste.fuel_kwh, units),
             )
             for one in found.mixes
         ],
     )
     click.echo(
-        f"\nStart-ups and mix changes, apart: {_range(found.start_up_waste.fuel_kwh)} kWh, "
+        f"\nStart-ups and mix changes, apart: {_heat(found.start_up_waste.fuel_kwh, units)}, "
         f"{_range(found.start_up_waste.money)} {found.currency}.\n"
     )
     for none in found.no_advice:
@@ -149,7 +149,7 @@ def _print(found: Review, zone: ZoneInfo, units: UnitSystem, loads: bool) -> Non
                     f"{one.minutes:.0f}",
                     mass(one.hot_tonnes),
                     mass(one.cold_tonnes),
-                    f"{_range(one.waste.fuel_kwh)} kWh",
+                    _heat(one.waste.fuel_kwh, units),
                 )
                 for one in causes
             ],
@@ -197,6 +197,14 @@ def _print_excursions(found: list[Excursion], zone: ZoneInfo, units: UnitSystem)
             for one in found
         ],
     )
+
+
+def _heat(kwh: Span, units: UnitSystem) -> str:
+    from advisor.units import shown_number, shown_unit
+
+    low, high = (shown_number(3.6e6 * one, "energy", units) for one in (kwh.low, kwh.high))
+    places = 0 if units == "si" else 1
+    return f"{low:,.{places}f} to {high:,.{places}f} {shown_unit('energy', units)}"
 
 
 def _range(span: Span) -> str:

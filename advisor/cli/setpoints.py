@@ -128,7 +128,7 @@ def _print_clash(advice: Advice, units: UnitSystem) -> None:
 
 
 def _print_more(advice: Advice, units: UnitSystem) -> None:
-    from advisor.units import shown
+    from advisor.units import from_si, shown, to_si
 
     if advice.rolling:
         rolling = advice.rolling
@@ -144,10 +144,17 @@ def _print_more(advice: Advice, units: UnitSystem) -> None:
         )
     if advice.heat:
         heat = advice.heat
-        money = f", {heat.money_t:.2f} {heat.currency}/t" if heat.money_t is not None else ""
+        per, t_per_ton = ("ton", to_si(1e-3, "ton", "mass")) if units == "us" else ("t", 1.0)
+        money = (
+            f", {heat.money_t * t_per_ton:.2f} {heat.currency}/{per}"
+            if heat.money_t is not None
+            else ""
+        )
+        of_co2 = "lb/ton" if units == "us" else "kg/t"
+        co2 = from_si(1e-3 * heat.co2_kg_t, of_co2, "emission_factor")
         click.echo(
             f"- Fuel expected: {shown(heat.gross_kwh_t * 3600.0, 'heat_per_mass', units)} gross"
-            f"{money}, {heat.co2_kg_t:.1f} kg CO2/t, at {heat.moisture_of_dry_mass:.1%} moisture."
+            f"{money}, {co2:.1f} {of_co2} of CO2, at {heat.moisture_of_dry_mass:.1%} moisture."
         )
     if advice.contributions:
         first = ", ".join(

@@ -197,7 +197,7 @@ def _assembled(
         waste=findings.waste,
         start_up_waste=findings.start_up_waste,
         currency=plant.currency,
-        sentence=review_sentence(findings, plant.currency),
+        sentence=review_sentence(findings, plant.currency, facts.units),
         cautions=(caution_text("C14"), *_clock_words(log)),
         no_advice=findings.no_advice,
     )

@@ -4,9 +4,10 @@ from __future__ import annotations
 
 from advisor.review.kernel import Findings
 from advisor.review.result import Span
+from advisor.units import UnitSystem, shown_number, shown_unit
 
 
-def review_sentence(findings: Findings, currency: str) -> str:
+def review_sentence(findings: Findings, currency: str, units: UnitSystem) -> str:
     """What the period cost above its windows, with its range, and where most of it was."""
     if findings.tonnes <= 0:
         return "No mix was made in this period."
@@ -14,8 +15,8 @@ def review_sentence(findings: Findings, currency: str) -> str:
     if waste.excess_tk <= 0:
         return "No mix in production was hotter than its window in this period."
     words = (
-        f"{_span(waste.fuel_kwh)} kWh of fuel, {_span(waste.money)} {currency}, went into mix "
-        "hotter than its window"
+        f"{_span(_heat(waste.fuel_kwh, units))} {shown_unit('energy', units)} of fuel, "
+        f"{_span(waste.money)} {currency}, went into mix hotter than its window"
     )
     mix = max(findings.mixes, key=lambda one: one.waste.excess_tk)
     share = mix.waste.excess_tk / sum(one.waste.excess_tk for one in findings.mixes)
@@ -23,6 +24,12 @@ def review_sentence(findings: Findings, currency: str) -> str:
     early = _before_nine(findings)
     when = f", {early:.0%} of the hot tonnes before nine" if early >= 0.3 else ""
     return f"{words}{where}{when}."
+
+
+def _heat(kwh: Span, units: UnitSystem) -> Span:
+    return Span(
+        *(shown_number(3.6e6 * one, "energy", units) for one in (kwh.low, kwh.middle, kwh.high))
+    )
 
 
 def _span(span: Span) -> str:

@@ -45,6 +45,7 @@ def test_fahrenheit_for_those_who_use_it(run) -> None:
     _, out, _ = run(sheet("plain"), "--us")
     assert "309 °F" in out
     assert "Mixed 18.0 °F hotter" in out
+    assert "margin kept below the flash point" in out and " K " not in out
 
 
 def test_a_modified_binder_gets_the_suppliers_range_or_no_number(run) -> None:

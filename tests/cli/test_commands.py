@@ -76,6 +76,10 @@ def test_setpoints_in_us_units_convert_a_difference_as_one(run, demo_folder):
     margin = float(re.findall(r"Target: ([\d.]+) °C above", si)[0])
     margin_f = float(re.findall(r"Target: ([\d.]+) °F above", us)[0])
     assert margin_f == pytest.approx(margin * 1.8, abs=0.2)
+    money, carbon = map(float, re.findall(r"([\d.]+) GBP/t, ([\d.]+) kg/t of CO2", si)[0])
+    money_us, carbon_us = map(float, re.findall(r"([\d.]+) GBP/ton, ([\d.]+) lb/ton", us)[0])
+    assert money_us == pytest.approx(money * 0.90718, abs=0.01)  # a short ton is 907.18 kg
+    assert carbon_us == pytest.approx(2 * carbon, abs=0.15)
     # a contract's own figure stays as it was written
     assert "contract minimum 280 F" in si and "contract minimum 280 F" in us
 

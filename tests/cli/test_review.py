@@ -20,6 +20,15 @@ def test_differences_are_converted_as_differences(run, demo_folder):
     at_drum = [one for one in found["excursions"] if one["point"] == "discharge"]
     assert [int(one) for one in peaks] == [round(1.8 * one["peak_k"]) for one in at_drum]
     assert at_drum and "°C" not in out
+    assert "MMBtu" in found["sentence"] and "kWh" not in out
+    _, si, _ = run("review", demo_folder, *NIGHT)
+    assert re.search(r"kWh of fuel", si) and "MMBtu" not in si
+    low_mmbtu, low_kwh = (
+        float(re.search(r"^([\d.,]+) to ", text, re.MULTILINE)[1].replace(",", ""))
+        for text in (out, si)
+    )
+    # both rounded to two digits; 1 MMBtu is 293.07 kWh
+    assert low_mmbtu * 293.07 == pytest.approx(low_kwh, rel=0.06)
     assert " K" not in " ".join(one["evidence"] for one in found["excursions"])
 
 
