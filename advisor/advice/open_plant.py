@@ -45,7 +45,7 @@ def moment_now(folder: PlantFolder, written: str | None = None) -> datetime:
 
     Raises FaultyInput where ``written`` is not a time.
     """
-    if written:
+    if written is not None:
         return utc_of(written, folder.zone)
     if folder.plant.shown_at:
         return utc_of(folder.plant.shown_at, folder.zone)

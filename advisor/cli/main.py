@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+import difflib
 import importlib
 import json
 import sys
+import traceback
 from collections.abc import Sequence
 
 import click
@@ -38,6 +40,17 @@ class Commands(click.Group):
         word = cmd_name.replace("-", "_")
         command = getattr(importlib.import_module(f"advisor.cli.{word}"), word)
         return command if isinstance(command, click.Command) else None
+
+    def resolve_command(
+        self, ctx: click.Context, args: list[str]
+    ) -> tuple[str | None, click.Command | None, list[str]]:
+        """The command ``args`` begin with; a word that is none is refused with the nearest."""
+        word = args[0]
+        if word not in COMMANDS and not word.startswith("-"):
+            near = difflib.get_close_matches(word, COMMANDS, n=1)
+            meant = f"Did you mean '{near[0]}'? " if near else ""
+            ctx.fail(f"'{word}' is no command. {meant}Known here: {', '.join(COMMANDS)}.")
+        return super().resolve_command(ctx, args)
 
     def format_commands(self, ctx: click.Context, formatter: click.HelpFormatter) -> None:
         """Write what each command answers without loading any of them."""
@@ -76,7 +89,24 @@ def main(arguments: Sequence[str] | None = None) -> None:
         code = _refuse(
             AdvisorError(Fault("file", problem, file=str(error.filename or ""))), "--json" in given
         )
+    except Exception as error:  # a mistake of ours: told in one sentence, with its place
+        if sys.flags.dev_mode:  # python -X dev -m advisor
+            raise
+        code = _refuse(AdvisorError(_own_mistake(error)), "--json" in given)
     sys.exit(code if isinstance(code, int) else 0)
+
+
+def _own_mistake(error: Exception) -> Fault:
+    """The fault that says where the program itself went wrong."""
+    last = traceback.extract_tb(error.__traceback__)[-1]
+    said = f"{type(error).__name__}: {error}".rstrip(": ")
+    return Fault(
+        "program",
+        f"The program itself went wrong: {said}.",
+        "No advice is given. Tell its developers this line and the command you gave.",
+        file=last.filename,
+        line=last.lineno,
+    )
 
 
 def _refuse(error: AdvisorError, as_json: bool) -> int:
@@ -94,6 +124,8 @@ def _refuse(error: AdvisorError, as_json: bool) -> int:
 
 def _refuse_usage(error: click.ClickException, as_json: bool) -> int:
     if as_json:
-        return _refuse(FaultyInput(Fault("usage", error.format_message())), as_json)
+        asked = error.ctx if isinstance(error, click.UsageError) else None
+        remedy = f"See '{asked.command_path if asked else 'advisor'} --help'."
+        return _refuse(FaultyInput(Fault("usage", error.format_message(), remedy)), as_json)
     error.show()
     return 2

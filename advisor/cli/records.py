@@ -111,8 +111,14 @@ def show(
             moment = utc_of(at, folder.zone)
             found = [store.held(kind, each, moment, known) for each in subjects]
             entries = tuple(entry for entry in found if entry)
+        known_subjects = store.subjects(kind)
     if as_json:
         print_json({"kind": kind, "entries": [_without_model(entry) for entry in entries]})
+        return
+    if not entries:
+        about = f" about '{subject}'" if subject else ""
+        when = f" that held at {at}" if at else ""
+        click.echo(f"No {kind}{about}{when} is recorded.{_recorded_about(known_subjects)}")
         return
     columns = list(dict.fromkeys(name for entry in entries for name in entry.written))
     print_table(
@@ -128,6 +134,10 @@ def show(
             for entry in entries
         ],
     )
+
+
+def _recorded_about(subjects: tuple[str, ...]) -> str:
+    return f" Facts of this kind are about: {', '.join(subjects)}." if subjects else ""
 
 
 def _without_model(entry: object) -> dict[str, object]:

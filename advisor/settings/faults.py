@@ -66,6 +66,13 @@ _NEEDS = {
     "float_type": ("a number", "Write a number without a unit."),
 }
 
+_BOUNDS = {
+    "greater_than": ("above", "gt"),
+    "greater_than_equal": ("at least", "ge"),
+    "less_than": ("below", "lt"),
+    "less_than_equal": ("at most", "le"),
+}
+
 
 def _fault(error: Any, model: type[BaseModel], source: YamlSource, above: Steps) -> Fault:
     inside: Steps = tuple(error["loc"])
@@ -120,6 +127,10 @@ def _fault(error: Any, model: type[BaseModel], source: YamlSource, above: Steps)
         least = context["min_length"]
         problem = "This may not be empty." if least == 1 else f"This needs at least {least} values."
         remedy = f"Wanted: {_wanted(model, inside)}"
+    elif kind in _BOUNDS:
+        bound, key = _BOUNDS[kind]
+        problem = f"{written or given} is not {bound} {context[key]:g}."
+        remedy = f"Write a number {bound} {context[key]:g}."
     else:
         problem = f"{error['msg']}."
     place = source.place(steps)

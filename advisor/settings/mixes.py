@@ -25,7 +25,7 @@ from advisor.settings.fields import (
     Written,
     refusal,
 )
-from advisor.settings.plant import OwnLimit, Terrain
+from advisor.settings.plant import Latitude, OwnLimit, Terrain
 
 Limits = Annotated[tuple[OwnLimit, ...], Field(strict=False)]
 
@@ -154,7 +154,7 @@ class Job(Strict):
     """temperature below which rolling adds no density, where the job sets it"""
     terrain: Terrain
     """what surrounds the paving site"""
-    latitude: Angle | None = None
+    latitude: Latitude | None = None
     longitude: Angle | None = None
     limits: Limits = ()
 

@@ -29,12 +29,16 @@ from advisor.settings.fields import (
     StackTemperature,
     Strict,
     Temperature,
-    TemperatureDelta,
     Volume,
     VolumeFlow,
     Written,
     refusal,
 )
+
+Latitude = Annotated[Written, OfKind("angle", -90.0, 90.0, "a latitude")]
+# Beyond these a plant is out of control or a sensor broken: more likely a slip of the pen.
+Scatter = Annotated[Written, OfKind("temperature_delta", 0.0, 30.0, "the scatter of discharge")]
+Tolerance = Annotated[Written, OfKind("temperature_delta", 0.0, 30.0, "a sensor's tolerance")]
 
 Point = Literal[
     "binder_tank", "hot_aggregate", "discharge", "silo", "load_out", "delivery", "base", "air"
@@ -169,7 +173,7 @@ class Sensor(Strict):
 
     kind: Name | None = None
     """a class of config/sensors.yaml"""
-    tolerance: TemperatureDelta | None = None
+    tolerance: Tolerance | None = None
     """tolerance found on site, both ways, in place of that of the class"""
     checked_on: Day | None = None
 
@@ -205,7 +209,7 @@ class Plant(Strict):
     """only for an invented plant: the plant time at which it is shown"""
     time_zone: Name
     """zone of the plant's clock, such as Europe/London"""
-    latitude: Angle
+    latitude: Latitude
     """north is positive"""
     longitude: Angle
     """east is positive"""
@@ -222,7 +226,7 @@ class Plant(Strict):
     silos: Annotated[tuple[Silo, ...], Field(strict=False)] = ()
     sensors: dict[str, Sensor]
     """tolerance of each temperature signal"""
-    control_scatter: TemperatureDelta
+    control_scatter: Scatter
     """standard deviation of discharge about its setpoint in steady running"""
     confidence: Fraction
     """how sure delivery has to be, such as 95 %"""

@@ -23,6 +23,7 @@ MOST_VALUES = (
     200_000  # counted with aliases unfolded, so that a small file cannot become a huge one
 )
 DEEPEST = 32
+LONGEST_SHOWN = 120  # characters of a faulty line repeated to the reader
 
 _Loader: Any = getattr(yaml, "CSafeLoader", yaml.SafeLoader)
 
@@ -237,6 +238,11 @@ def _syntax_fault(error: yaml.YAMLError, file: str, text: str) -> Fault:
     written = lines[line - 1] if line and line <= len(lines) else ""
     if "\t" in written[: len(written) - len(written.lstrip())] or "'\\t'" in str(error):
         problem, remedy = "A tab is used to indent.", "Indent with spaces."
+    elif "undefined alias" in str(error):
+        problem = (
+            f"'{written.strip()}' begins a value with '*', which means something named before."
+        )
+        remedy = "Put a value that begins with '*' in quotes."
     else:
         said = getattr(error, "problem", None) or str(error).splitlines()[0]
         problem, remedy = (
@@ -244,5 +250,11 @@ def _syntax_fault(error: yaml.YAMLError, file: str, text: str) -> Fault:
             "Check the line and the one above it for a missing colon, quote or space.",
         )
     return Fault(
-        "yaml", problem, remedy, file=file, line=line, column=column, value=written.strip()
+        "yaml",
+        problem,
+        remedy,
+        file=file,
+        line=line,
+        column=column,
+        value=written.strip()[:LONGEST_SHOWN],
     )
