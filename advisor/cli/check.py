@@ -31,7 +31,7 @@ def check(plant: Path, as_json: bool) -> None:
     from advisor.errors import AdvisorError, FaultyInput
     from advisor.logs import read_kind
     from advisor.logs.mapping import check_mapping
-    from advisor.records import disagreements
+    from advisor.records import disagreements, not_yet_known
 
     facts = open_plant(plant, latest_only=True)
     folder = facts.folder
@@ -46,6 +46,7 @@ def check(plant: Path, as_json: bool) -> None:
         faults += [*facts.unread, *(one.refused for one in loads if one.refused)]
     with facts.records as records:
         faults.extend(disagreements(records, folder))
+        lacking = list(not_yet_known(records, folder))
         entries = records.count()
     if faults:
         raise FaultyInput(*faults)
@@ -58,7 +59,13 @@ def check(plant: Path, as_json: bool) -> None:
         "dated facts": entries,
     }
     if as_json:
-        print_json({"plant": folder.plant.name, "faults": [], "found": found})
+        print_json(
+            {"plant": folder.plant.name, "faults": [], "found": found, "not_yet_known": lacking}
+        )
         return
     click.echo(f"{folder.plant.name}: the plant folder is sound.\n")
     print_table(("what", "count"), found.items())
+    if lacking:
+        click.echo("\nNot known yet:")
+    for sentence in lacking:
+        click.echo(f"  {sentence}")

@@ -1,6 +1,6 @@
 """Records: dated facts in one SQLite file, added and never changed; text in, text out."""
 
-from advisor.records.agreement import disagreements
+from advisor.records.agreement import disagreements, not_yet_known
 from advisor.records.entry import Entry
 from advisor.records.files import ImportReport, export_files, import_files
 from advisor.records.kinds import KINDS
@@ -18,6 +18,7 @@ __all__ = [
     "export_files",
     "import_files",
     "new_entry",
+    "not_yet_known",
     "open_records",
     "store_path",
     "withdrawal",

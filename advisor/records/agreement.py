@@ -18,6 +18,7 @@ def disagreements(records: Records, folder: PlantFolder) -> Iterator[Fault]:
     silos = [silo.name for silo in folder.plant.silos]
     jobs = {job.code: job for job in folder.jobs}
     lots = [entry.subject for entry in records.all_held("certificate")]
+    told: set[str] = set()
 
     def fault(entry: Entry, field: str, what: str, name: str, known: list[str]) -> Iterator[Fault]:
         if name not in known:
@@ -35,9 +36,19 @@ def disagreements(records: Records, folder: PlantFolder) -> Iterator[Fault]:
     for kind in ("receipt", "dip"):
         for entry in records.all_held(kind):
             yield from fault(entry, "subject", "tank", entry.subject, tanks)
-            if entry.fact.certificate is not None:
-                lot = entry.fact.certificate
-                yield from fault(entry, "certificate", "lot", lot, lots)
+            lot = entry.fact.certificate
+            if lot is not None and lot not in lots and lot not in told:  # many loads, one lot
+                told.add(lot)
+                yield Fault(
+                    "no-certificate",
+                    f"The {kind} of {entry.subject} from "
+                    f"{local_text(entry.valid_from, folder.zone)} names the lot '{lot}', whose "
+                    "certificate is not recorded.",
+                    f"Record it, or a correction of {entry.id}. {nearest(lot, lots)}".rstrip(),
+                    file=str(records.path),
+                    field="certificate",
+                    value=lot,
+                )
     for entry in records.all_held("job_run"):
         run = entry.fact
         yield from fault(entry, "tank", "tank", run.tank, tanks)
@@ -51,3 +62,19 @@ def disagreements(records: Records, folder: PlantFolder) -> Iterator[Fault]:
         yield from fault(entry, "subject", "job", entry.subject, list(jobs))
     for entry in records.all_held("weather"):
         yield from fault(entry, "subject", "job", entry.subject, [*jobs, "plant"])
+
+
+def not_yet_known(records: Records, folder: PlantFolder) -> Iterator[str]:
+    """What nobody recorded yet and advice cannot do without, one sentence each."""
+    filled = {
+        entry.subject
+        for kind in ("receipt", "dip")
+        for entry in records.all_held(kind)
+        if entry.fact.certificate is not None
+    }
+    for tank in folder.tanks:
+        if tank.name not in filled:
+            yield (
+                f"What {tank.name} holds: no dip or receipt names a certificate, so there is no "
+                "advice from it. Record a dip with the lot in the tank."
+            )

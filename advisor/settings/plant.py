@@ -12,6 +12,7 @@ from zoneinfo import ZoneInfo, ZoneInfoNotFoundError
 from pydantic import Field, field_validator, model_validator
 
 from advisor.glossary import quantity
+from advisor.settings.faults import nearest
 from advisor.settings.fields import (
     Angle,
     ClockTime,
@@ -51,6 +52,10 @@ SIGNALS = re.compile(
     r"discharge_c|hot_aggregate_c|stack_c|load_out_c|delivery_c|binder_tank_[1-9]\d*_c"
     r"|silo_[1-9]\d*_(c|kg)"
 )
+_SOME_SIGNALS = (
+    *("discharge_c", "hot_aggregate_c", "stack_c", "load_out_c", "delivery_c"),
+    *("binder_tank_1_c", "silo_1_c", "silo_1_kg"),
+)
 
 
 def read_signal(name: Any) -> Any:
@@ -59,8 +64,7 @@ def read_signal(name: Any) -> Any:
         raise refusal(
             "unknown-signal",
             f"'{name}' is not a signal known here.",
-            "Known here: discharge_c, hot_aggregate_c, stack_c, load_out_c, delivery_c, "
-            "binder_tank_1_c, silo_1_c, silo_1_kg (and other numbers).",
+            f"{nearest(name, _SOME_SIGNALS)[:-1]} (and other numbers).",
         )
     return name
 

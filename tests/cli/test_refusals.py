@@ -90,6 +90,23 @@ def test_nothing_found_is_said_with_what_there_is(run, demo_folder):
     assert code == 0 and "No certificate about 'X-1'" in out and "A-2641" in out
 
 
+def test_a_tank_nobody_knows_the_binder_of_is_told_by_check(run, own_demo):
+    for name in ("receipts.csv", "dips.csv"):
+        (own_demo / "records" / name).unlink()
+    code, out, _ = run("check", own_demo)
+    assert code == 0 and all(f"What tank {number} holds" in out for number in (1, 2, 3))
+    _, text, _ = run("check", own_demo, "--json")
+    assert len(json.loads(text)["not_yet_known"]) == 3
+
+
+def test_a_lot_without_certificate_is_one_fault_however_many_loads_name_it(run, own_demo):
+    (own_demo / "records" / "certificates.yaml").unlink()
+    code, out, err = run("check", own_demo)
+    assert code == 2 and out == ""
+    for lot in ("A-2641", "A-2642", "B-4410", "P-0917"):
+        assert err.count(f"'{lot}', whose certificate is not recorded. Record it") == 1
+
+
 def test_a_mistake_of_the_program_is_one_sentence_with_its_place(run, monkeypatch):
     def wrong(*_, **__):
         raise ZeroDivisionError("division by zero")

@@ -34,6 +34,7 @@ def changed(folder, file, old, new):
         ("control_scatter: 2.5 C", "control_scatter: 160 C", 67, ["0 C to 30 C"]),
         ("control_scatter: 2.5 C", "control_scatter: 160 F", 67, ["0 F to 54 F"]),
         ("tolerance: 3 C", "tolerance: 300 C", 57, ["tolerance", "0 C to 30 C"]),
+        ("  stack_c: {kind", "  stak_c: {kind", 57, ["'stak_c'", "Did you mean 'stack_c'"]),
         ("air_ratio: 1.9", "air_ratio: 0.5", 23, ["0.5 is not at least 1"]),
         ("amount: 0.041", "amount: -0.041", 22, ["amount", "above 0"]),
         ("checked_on: 2026-10-12}   #", "checked_on: 12/10/2026}   #", 57, ["2026-10-19"]),
