@@ -10,7 +10,7 @@ import plotly.graph_objects as go
 from advisor.figures.base import NOTE_PX, TEXT_PX, bare, delta, note, whole_delta
 from advisor.figures.ink import COLD_MARK, HOT_MARK, LIGHT, Ink
 from advisor.review.result import HourCell, Review
-from advisor.units import UnitSystem, shown_unit
+from advisor.units import UnitSystem, shown, shown_unit
 
 Cell = tuple[str, int]
 
@@ -166,7 +166,8 @@ def _mark(cell: HourCell, units: UnitSystem, narrow: bool) -> str:
 
 
 def _hover(cell: HourCell, units: UnitSystem) -> str:
-    return (
-        f"{cell_words(cell, units)}; {cell.tonnes:.0f} t made, "
-        f"{cell.hot_tonnes:.0f} t hot, {cell.cold_tonnes:.0f} t cold"
+    made, hot, cold = (
+        shown(1000.0 * tonnes, "mass", units, 0)
+        for tonnes in (cell.tonnes, cell.hot_tonnes, cell.cold_tonnes)
     )
+    return f"{cell_words(cell, units)}; {made} made, {hot} hot, {cold} cold"

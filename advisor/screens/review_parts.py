@@ -23,7 +23,7 @@ from advisor.screens.words import (
     money_words,
     unit_words,
 )
-from advisor.units import UnitSystem, shown_number, shown_unit
+from advisor.units import UnitSystem, from_si, shown_number, shown_unit
 
 # A chosen excursion is shown with this much before and after it.
 AROUND_MIN = 30
@@ -42,10 +42,14 @@ def summary(review: Review, units: UnitSystem) -> Any:
         (_marked("cold"), *_share(review.cold_tonnes, whole, units)),
         ("No advice in force", *_share(review.no_advice_tonnes, whole, units)),
     ]
+    of_co2 = "lb" if units == "us" else "kg"
+    low, high = (
+        from_si(kg, of_co2, "mass") for kg in (review.waste.co2_kg.low, review.waste.co2_kg.high)
+    )
     waste = [
         ("Too much fuel", energy_words(review.waste.fuel_kwh, units)),
         ("worth", money_words(review.waste.money, review.currency)),
-        ("CO2", _range(review.waste.co2_kg.low, review.waste.co2_kg.high, "kg")),
+        ("CO2", _range(low, high, of_co2)),
         ("start-ups and changes, apart", energy_words(review.start_up_waste.fuel_kwh, units)),
     ]
     return [

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from dataclasses import replace
 from datetime import timedelta
 from itertools import combinations
@@ -18,6 +19,7 @@ from advisor.figures.thinning import thinned
 from advisor.figures.trend import outside_masks, trend, trend_words
 from advisor.figures.week_field import days_of, field_words, week_field
 from advisor.review.ranking import cause_shares
+from advisor.screens.review_parts import summary
 from screens.made_up import EXCURSIONS, NOW, WEEK, ZONE, MadeUpPlant, advice, clashing, review
 
 PLANT = MadeUpPlant()
@@ -106,6 +108,15 @@ def test_parts_of_a_trace_outside_the_window_are_marked_and_only_they():
     np.testing.assert_array_equal(hot, trace.values_c > high)
     np.testing.assert_array_equal(cold, trace.values_c < low)
     assert hot.any()
+
+
+def test_masses_of_the_review_are_short_tons_and_pounds_for_us_readers():
+    worst = re.search(r"; (\d+) t made", field_words(review(), "si"))
+    worst_us = re.search(r"; (\d+) ton made", field_words(review(), "us"))
+    assert worst and worst_us
+    assert float(worst_us[1]) == pytest.approx(float(worst[1]) / 0.90718, abs=1.2)
+    co2 = str(summary(review(), "us"))
+    assert " lb" in co2 and " kg" not in co2
 
 
 def test_a_long_trace_is_thinned_without_losing_its_extremes():
